@@ -109,7 +109,7 @@ mod tests {
 
     #[test]
     fn no_overflow_in_squares() {
-        assert_eq!(Quantity::new(0.0, 3e200).plus(Quantity::new(0.0, 4e200)).u, 5e200);
+        assert!((Quantity::new(0.0, 3e200).plus(Quantity::new(0.0, 4e200)).u / 5e200 - 1.0).abs() < 1e-15);
         assert!(Quantity::new(0.0, 3e-200).plus(Quantity::new(0.0, 4e-200)).u > 4.9e-200);
     }
 }
