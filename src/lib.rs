@@ -3,7 +3,7 @@
 //! The house, from the ground up:
 //! - ground: [`quantity`] (value ± u), [`status`] (why there is no value), [`selectors`] (tables, laws, units to choose
 //!   from), [`declare`] (what the worksheet functions say of themselves), [`constants`], [`units`], [`tables`],
-//!   [`molecule`];
+//!   [`molecule`], [`parallel`];
 //! - families of science, pure functions without input or output: [`elements`], [`bonds`], [`charges`], [`moments`];
 //! - [`library`]: files of structures in, the polarity table out;
 //! - [`catalogue`]: the JSON text in which the library describes itself;
@@ -21,6 +21,7 @@ pub mod elements;
 pub mod library;
 pub mod molecule;
 pub mod moments;
+pub mod parallel;
 pub mod quantity;
 pub mod selectors;
 pub mod status;

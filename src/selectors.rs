@@ -128,6 +128,43 @@ selectors! {
     }
     "unit" {
         UNIT_ANGSTROM = 301, "Å";
+        UNIT_PM = 302, "pm";
+        UNIT_NM = 303, "nm";
+        UNIT_M = 304, "m";
+        UNIT_BOHR = 305, "bohr (a0, the atomic unit of length)";
+        UNIT_DEBYE = 311, "D";
+        UNIT_C_M = 312, "C m";
+        UNIT_E_ANGSTROM = 313, "e Å";
+        UNIT_E_BOHR = 314, "e a0 (the atomic unit of dipole)";
+        UNIT_E = 321, "e (elementary charge)";
+        UNIT_COULOMB = 322, "C";
+        UNIT_KJ_PER_MOL = 331, "kJ/mol";
+        UNIT_KCAL_PER_MOL = 332, "kcal/mol (thermochemical, 4.184 kJ/mol)";
+        UNIT_EV = 333, "eV";
+        UNIT_HARTREE = 334, "hartree (the atomic unit of energy)";
+        UNIT_JOULE = 335, "J (of one particle)";
+        UNIT_PER_CM = 336, "cm⁻¹ (energy divided by h c)";
+        UNIT_KELVIN = 341, "K (temperature, or energy divided by k)";
+        UNIT_CELSIUS = 342, "°C";
+        UNIT_ANGSTROM3 = 351, "Å³ (of one particle)";
+        UNIT_NM3 = 352, "nm³ (of one particle)";
+        UNIT_BOHR3 = 353, "a0³ (the atomic unit of polarizability)";
+        UNIT_C2_M2_PER_J = 354, "C² m²/J (polarizability times 4 pi epsilon0)";
+        UNIT_CM3_PER_MOL = 355, "cm³/mol";
+        UNIT_D_ANGSTROM = 361, "D Å";
+        UNIT_E_BOHR2 = 362, "e a0² (the atomic unit of quadrupole)";
+        UNIT_C_M2 = 363, "C m²";
+        UNIT_DALTON = 366, "u (dalton)";
+        UNIT_KG = 367, "kg";
+        UNIT_ELECTRON_MASS = 368, "electron mass (the atomic unit of mass)";
+        UNIT_U_ANGSTROM2 = 371, "u Å²";
+        UNIT_KG_M2 = 372, "kg m²";
+        UNIT_MHZ = 376, "MHz";
+        UNIT_GHZ = 377, "GHz";
+        UNIT_DEGREE = 381, "° (angle)";
+        UNIT_RADIAN = 382, "rad";
+        UNIT_G_PER_CM3 = 386, "g/cm³";
+        UNIT_KG_PER_M3 = 387, "kg/m³";
     }
 }
 

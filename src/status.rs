@@ -80,6 +80,7 @@ codes! {
     FlatDrawing = 801, "FLAT_DRAWING", "the record is a flat drawing without a geometry";
     HydrogensMissing = 802, "HYDROGENS_MISSING", "the record lacks hydrogen atoms";
     NoAtoms = 803, "NO_ATOMS", "the record has no atoms";
+    SeveralFragments = 804, "SEVERAL_FRAGMENTS", "the record holds several fragments; the detail lists each one";
     // A fault of the library itself.
     Internal = 990, "INTERNAL", "an internal fault of the library; please report it";
 }

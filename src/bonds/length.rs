@@ -131,8 +131,8 @@ pub static BOND_LENGTH: Function = Function {
 /// uses; `state_a`, `state_b` choose an entry where a table tells states apart. Ranges: see [`BOND_LENGTH`].
 ///
 /// # Errors
-/// `UnknownSelector`, `WrongSelector`, `Missing`, `UnknownElement`, `OutOfRange` (order), `NotAllowed` (law with these
-/// radii, scale or elements), `NoData` (the table has no such entry).
+/// `UnknownSelector`, `WrongSelector`, `Missing`, `UnknownElement`, `OutOfRange` (order, or element outside the law),
+/// `NotAllowed` (law with these radii or this scale), `NoData` (the table has no such entry).
 #[allow(clippy::too_many_arguments)]
 pub fn bond_length(
     radii: Selector,
@@ -190,16 +190,12 @@ pub fn bond_length(
         }
         selectors::LENGTH_PAULING_ORDER_1960 => {
             single_bond_radii(radii)?;
-            if is_metal(a) || is_metal(b) {
-                return Err(Failure::of(Code::NotAllowed, 2));
-            }
+            partners(false, a, b)?;
             if order < 1.0 { out_of_range } else { ordered(sum(radii)?, COVALENT_ORDER_A, order) }
         }
         _ => {
             single_bond_radii(radii)?;
-            if !is_metal(a) || !is_metal(b) {
-                return Err(Failure::of(Code::NotAllowed, 2));
-            }
+            partners(true, a, b)?;
             if !(0.05..=1.0).contains(&order) { out_of_range } else { ordered(sum(radii)?, METAL_ORDER_A, order) }
         }
     }
@@ -212,6 +208,16 @@ fn order_of(radii: Selector) -> f64 {
         selectors::RADII_PYYKKO_TRIPLE_2005 => 3.0,
         _ => 1.0,
     }
+}
+
+/// The bond-order laws hold between metals or between non-metals.
+fn partners(metals: bool, a: i32, b: i32) -> Result<(), Failure> {
+    for (argument, element) in [(4, a), (6, b)] {
+        if is_metal(element) != metals {
+            return Err(Failure::of(Code::OutOfRange, argument));
+        }
+    }
+    Ok(())
 }
 
 fn single_bond_radii(radii: Selector) -> Result<(), Failure> {

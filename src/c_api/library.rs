@@ -1,0 +1,547 @@
+//! Entry points for libraries of compounds: structures in memory, and runs through files.
+
+use std::cell::UnsafeCell;
+use std::ffi::c_char;
+use std::path::PathBuf;
+use std::sync::Arc;
+use std::sync::atomic::{AtomicBool, Ordering};
+
+use super::arrays::{Arrays, Cell, In};
+use super::guard::{guard, pool};
+use super::handles::{Handle, Kind, borrow, free, leak, magic};
+use super::molecules::{BondArrays, Bonds, ChargeColumn, MoleculeArrays, Molecules, checked_offsets};
+use super::settings::{bmom_settings, bmom_stop, settings_of, stop_of};
+use super::table::{bmom_table, table_handle};
+use super::text::{TextOut, bytes_in, path_in, text_in};
+use crate::library::{Given, MoleculeLibrary, Problem, Progress, Tables, Tabulation, Wanted};
+use crate::parallel::Threads;
+use crate::selectors::{CHARGES_GIVEN, CHARGES_PEOE_1980, Selector};
+use crate::status::{Code, Failure};
+
+/// Structures in memory with their bonds. It never changes once it is made and may be shared by threads.
+pub struct bmom_library {
+    _opaque: [u8; 0],
+}
+
+/// A run through files of structures that hands out the tables batch by batch. One thread uses it at a time.
+pub struct bmom_tabulation {
+    _opaque: [u8; 0],
+}
+
+impl Kind for MoleculeLibrary {
+    const MAGIC: u64 = magic(3);
+}
+
+/// A run: used by one thread at a time and in one process.
+struct Run {
+    busy: AtomicBool,
+    process: u32,
+    threads: Threads,
+    progress: Arc<Progress>,
+    tabulation: UnsafeCell<Tabulation>,
+}
+
+impl Kind for Run {
+    const MAGIC: u64 = magic(4);
+}
+
+static NEVER: AtomicBool = AtomicBool::new(false);
+
+/// A problem with a file has a code; its words stand in the rows, or are those of the code.
+fn failure_of(problem: &Problem) -> Failure {
+    Failure::new(problem.code)
+}
+
+/// Reads a file of structures, or all files of a folder, into memory, and tells their bonds.
+/// Given: 1 format (BMOM_FORMAT_...); settings (NULL: defaults); threads (1: the caller's, 0: all); stop (NULL: none);
+/// 2 path [text; raw bytes on Unix]. Returned: 3 library, NULL after any failure; free it with bmom_library_free.
+/// Status: FILE_MISSING, FILE_UNREADABLE, BAD_FORMAT, UNKNOWN_SELECTOR, WRONG_SELECTOR, STOPPED, BAD_HANDLE, BUSY,
+/// NULL_POINTER. Notes: a broken record keeps its place; its row says what is wrong.
+/// Reference: CTfile Formats, the published specification (V2000 molfiles and SD files); XYZ is common practice.
+#[unsafe(no_mangle)]
+pub unsafe extern "C" fn bmom_library_read(
+    format: i32,
+    settings: *const bmom_settings,
+    threads: i32,
+    stop: *const bmom_stop,
+    path: *const c_char,
+    path_length: i64,
+    library: *mut *mut bmom_library,
+) -> i32 {
+    guard(|| {
+        // SAFETY: the caller's promise about every pointer, stated in the header.
+        let arrays = unsafe { Arrays::promised() };
+        let out = arrays.cell(3, library, std::ptr::null_mut())?;
+        let format = Selector(format).of_group("format").map_err(|failure| failure.argument(1))?;
+        let pool = pool(threads)?;
+        // SAFETY: as above.
+        let (_, stop, path) = unsafe { (settings_of(settings)?, stop_of(stop)?, path_in(2, path, path_length)?) };
+        let read = MoleculeLibrary::read(&path, format, pool, stop.unwrap_or(&NEVER));
+        out.set(leak(read.map_err(|problem| failure_of(&problem).argument(2))?).cast());
+        Ok(Code::Ok)
+    })
+}
+
+/// Reads structures from a text in memory, as bmom_library_read does from a file; the rows call it "text".
+/// Given: 1 format; settings; threads; stop; 2 content [bytes]. Returned: 3 library.
+/// Status: as bmom_library_read, without those of files.
+#[unsafe(no_mangle)]
+pub unsafe extern "C" fn bmom_library_parse(
+    format: i32,
+    settings: *const bmom_settings,
+    threads: i32,
+    stop: *const bmom_stop,
+    content: *const c_char,
+    content_length: i64,
+    library: *mut *mut bmom_library,
+) -> i32 {
+    guard(|| {
+        // SAFETY: the caller's promise about every pointer, stated in the header.
+        let arrays = unsafe { Arrays::promised() };
+        let out = arrays.cell(3, library, std::ptr::null_mut())?;
+        let format = Selector(format).of_group("format").map_err(|failure| failure.argument(1))?;
+        let pool = pool(threads)?;
+        // SAFETY: as above.
+        let (_, stop, content) =
+            unsafe { (settings_of(settings)?, stop_of(stop)?, bytes_in(2, content, content_length)?) };
+        let read = MoleculeLibrary::parse(content, "text", format, pool, stop.unwrap_or(&NEVER));
+        out.set(leak(read.map_err(|problem| failure_of(&problem).argument(2))?).cast());
+        Ok(Code::Ok)
+    })
+}
+
+/// Takes structures as the caller holds them.
+/// Given: 1 molecules: n, atom_offsets (n + 1), n_atoms, atomic_number, formal_charge [e] (NULL: derived), xyz_A [A]
+/// (3 an atom); 2 bonds: bond_offsets (n + 1; NULL: found), n_bonds, bond_atoms (2 a bond), bond_order; 3 charge_e,
+/// u_charge_e [e] (an atom each; NULL: none; used where the setting charge_model is CHARGES_GIVEN); 4 names: name_offsets
+/// (n + 1; NULL: none), name_bytes (UTF-8), n_name_bytes. Returned: 5 library, NULL after any failure.
+/// Status: NULL_POINTER, NEGATIVE_COUNT, TOO_LARGE, MISALIGNED, BAD_OFFSETS, NOT_UTF8. What is wrong with one molecule is
+/// told in its row of the tables.
+#[unsafe(no_mangle)]
+pub unsafe extern "C" fn bmom_library_from_arrays(
+    n: i64,
+    atom_offsets: *const i64,
+    n_atoms: i64,
+    atomic_number: *const i32,
+    formal_charge: *const i32,
+    xyz_A: *const f64,
+    bond_offsets: *const i64,
+    n_bonds: i64,
+    bond_atoms: *const i32,
+    bond_order: *const f64,
+    charge_e: *const f64,
+    u_charge_e: *const f64,
+    name_offsets: *const i64,
+    name_bytes: *const c_char,
+    n_name_bytes: i64,
+    library: *mut *mut bmom_library,
+) -> i32 {
+    guard(|| {
+        // SAFETY: the caller's promise about every pointer, stated in the header.
+        let mut arrays = unsafe { Arrays::promised() };
+        let out = arrays.cell(5, library, std::ptr::null_mut())?;
+        let from = MoleculeArrays { n, atom_offsets, n_atoms, atomic_number, formal_charge, xyz_A };
+        let molecules = Molecules::new(&mut arrays, 1, &from)?;
+        let rows = molecules.rows;
+        let bonds = Bonds::new(&mut arrays, 2, rows, &BondArrays { bond_offsets, n_bonds, bond_atoms, bond_order })?;
+        let model = if charge_e.is_null() { CHARGES_PEOE_1980 } else { CHARGES_GIVEN };
+        let charges = ChargeColumn::new(&mut arrays, 3, model, charge_e, u_charge_e, molecules.atoms)?;
+        let names = if name_offsets.is_null() || rows == 0 {
+            None
+        } else {
+            let bytes = super::arrays::count(n_name_bytes).map_err(|failure| failure.argument(4))?;
+            Some((arrays.input(4, name_offsets, rows + 1)?, arrays.input(4, name_bytes.cast::<u8>(), bytes)?, bytes))
+        };
+        let (view, bonds, charges) = (molecules.view()?, bonds.view()?, charges.view());
+        let names = match names {
+            Some((offsets, bytes, n)) => Some((checked_offsets(offsets.slice(), n, 4)?, In::slice(bytes))),
+            None => None,
+        };
+        let stated = (0..rows).map(|row| bonds.stated(row)).collect::<Vec<_>>();
+        let mut given = Vec::new();
+        for row in 0..rows {
+            let raw = view.raw(row);
+            let range = view.range(row);
+            let name = match names {
+                Some((offsets, bytes)) => std::str::from_utf8(&bytes[offsets[row] as usize..offsets[row + 1] as usize])
+                    .map_err(|_| Failure::of(Code::NotUtf8, 4))?,
+                None => "",
+            };
+            given.push(Given {
+                name,
+                atomic_number: raw.atomic_number,
+                formal_charge: raw.formal_charge,
+                xyz: raw.xyz,
+                bonds: stated[row].as_deref(),
+                charge_e: charges.map(|(charge, _)| &charge[range.clone()]),
+                u_charge_e: charges.and_then(|(_, u)| u).map(|u| &u[range]),
+            });
+        }
+        let made = MoleculeLibrary::from_given("arrays", &given, Threads::new(1), &NEVER);
+        out.set(leak(made.map_err(|problem| failure_of(&problem))?).cast());
+        Ok(Code::Ok)
+    })
+}
+
+/// Number of records, atoms and bonds. A broken record has no atoms; one whose bonds cannot be told has no bonds.
+/// Given: 1 library. Returned: 2 molecules; 3 atoms; 4 bonds. Status: BAD_HANDLE, NULL_POINTER.
+#[unsafe(no_mangle)]
+pub unsafe extern "C" fn bmom_library_size(
+    library: *const bmom_library,
+    molecules: *mut i64,
+    atoms: *mut i64,
+    bonds: *mut i64,
+) -> i32 {
+    guard(|| {
+        // SAFETY: the caller's promise about every pointer, stated in the header.
+        let arrays = unsafe { Arrays::promised() };
+        let out = [
+            arrays.cell(2, molecules, i64::MIN)?,
+            arrays.cell(3, atoms, i64::MIN)?,
+            arrays.cell(4, bonds, i64::MIN)?,
+        ];
+        // SAFETY: as above.
+        let library = unsafe { library_of(library)? };
+        let (molecules, atoms, bonds) = library.size();
+        for (cell, size) in out.into_iter().zip([molecules, atoms, bonds]) {
+            cell.set(i64::try_from(size).unwrap_or(i64::MAX));
+        }
+        Ok(Code::Ok)
+    })
+}
+
+/// Copies the structures out in the layout of a column of molecules; sizes by bmom_library_size; each array may be NULL.
+/// Given: 1 library. Returned: 2 atom_offsets (molecules + 1); 3 atomic_number; 4 formal_charge [e] (stated or derived);
+/// 5 xyz_A [A] (3 an atom); 6 bond_offsets (molecules + 1); 7 bond_atoms (2 a bond); 8 bond_order; row_status (a record
+/// that is broken or whose bonds cannot be told).
+/// Status: SOME_ROWS, NO_ROWS, MISALIGNED, OVERLAP, BAD_HANDLE, NULL_POINTER.
+#[unsafe(no_mangle)]
+pub unsafe extern "C" fn bmom_library_arrays(
+    library: *const bmom_library,
+    atom_offsets: *mut i64,
+    atomic_number: *mut i32,
+    formal_charge: *mut i32,
+    xyz_A: *mut f64,
+    bond_offsets: *mut i64,
+    bond_atoms: *mut i32,
+    bond_order: *mut f64,
+    row_status: *mut i32,
+) -> i32 {
+    guard(|| {
+        // SAFETY: the caller's promise about every pointer, stated in the header.
+        let (mut arrays, library) = unsafe { (Arrays::promised(), library_of(library)?) };
+        let (rows, atoms, bonds) = library.size();
+        let offsets_out = arrays.output_if(2, atom_offsets, rows + 1)?;
+        let number_out = arrays.output_if(3, atomic_number, atoms)?;
+        let charge_out = arrays.output_if(4, formal_charge, atoms)?;
+        let xyz_out = arrays.output_if(5, xyz_A, 3 * atoms)?;
+        let bond_offsets_out = arrays.output_if(6, bond_offsets, rows + 1)?;
+        let bond_atoms_out = arrays.output_if(7, bond_atoms, 2 * bonds)?;
+        let order_out = arrays.output_if(8, bond_order, bonds)?;
+        let status_out = arrays.output_if(0, row_status, rows)?;
+        arrays.no_overlap()?;
+        let (mut atom, mut bond, mut failed) = (0, 0, 0);
+        let offset = |out: Option<super::arrays::Out<i64>>, row: usize, at: usize| {
+            if let Some(out) = out {
+                out.set(row, at as i64);
+            }
+        };
+        offset(offsets_out, 0, 0);
+        offset(bond_offsets_out, 0, 0);
+        for (row, (entry, bonding)) in library.entries().iter().zip(library.bonding()).enumerate() {
+            if let crate::library::Entry::Molecule(record) = entry {
+                for (k, &z) in record.atomic_number.iter().enumerate() {
+                    let charge = match bonding {
+                        Ok(bonding) => bonding.formal_charge.get(k).copied(),
+                        Err(_) => record.formal_charge.as_ref().and_then(|charge| charge.get(k).copied()),
+                    };
+                    if let Some(out) = number_out {
+                        out.set(atom + k, z);
+                    }
+                    if let Some(out) = charge_out {
+                        out.set(atom + k, charge.unwrap_or(i32::MIN));
+                    }
+                    super::molecules::set_numbers(xyz_out, 3 * (atom + k), &record.xyz[k]);
+                }
+                atom += record.atomic_number.len();
+            }
+            let status = match bonding {
+                Ok(bonding) => {
+                    for one in &bonding.bonds {
+                        if let Some(out) = bond_atoms_out {
+                            out.set_all(2 * bond, &[one.a as i32, one.b as i32]);
+                        }
+                        super::molecules::set_numbers(order_out, bond, &[one.order]);
+                        bond += 1;
+                    }
+                    0
+                }
+                Err(failure) => {
+                    failed += 1;
+                    failure.status()
+                }
+            };
+            offset(offsets_out, row + 1, atom);
+            offset(bond_offsets_out, row + 1, bond);
+            if let Some(out) = status_out {
+                out.set(row, status);
+            }
+        }
+        Ok(super::arrays::rows_code(rows, failed))
+    })
+}
+
+/// The three tables of some records of a library; their columns stand in the catalogue.
+/// Given: 1 library; 2 measured (NULL: no measured dipoles are compared in this version); settings (NULL: defaults);
+/// threads; stop (NULL: none); 3 first (from 0); 4 n. Returned: 5 polarity; 6 bonds; 7 atoms: NULL where that table is not
+/// wanted; NULL is written after any failure. Free each with bmom_table_free.
+/// Status: NOT_ALLOWED (measured is not NULL), OUT_OF_RANGE, STOPPED, BAD_HANDLE, BUSY, NULL_POINTER.
+#[unsafe(no_mangle)]
+pub unsafe extern "C" fn bmom_polarity_table(
+    library: *const bmom_library,
+    measured: *const bmom_table,
+    settings: *const bmom_settings,
+    threads: i32,
+    stop: *const bmom_stop,
+    first: i64,
+    n: i64,
+    polarity: *mut *mut bmom_table,
+    bonds: *mut *mut bmom_table,
+    atoms: *mut *mut bmom_table,
+) -> i32 {
+    guard(|| {
+        // SAFETY: the caller's promise about every pointer, stated in the header.
+        let out = TablesOut::new(&unsafe { Arrays::promised() }, 5, [polarity, bonds, atoms])?;
+        none_measured(measured, 2)?;
+        let pool = pool(threads)?;
+        let (first, n) = (
+            super::arrays::count(first).map_err(|failure| failure.argument(3))?,
+            super::arrays::count(n).map_err(|failure| failure.argument(4))?,
+        );
+        // SAFETY: as above.
+        let (library, settings, stop) = unsafe { (library_of(library)?, settings_of(settings)?, stop_of(stop)?) };
+        let rows = library.size().0;
+        if first > rows || n > rows - first {
+            return Err(Failure::of(Code::OutOfRange, if first > rows { 3 } else { 4 }));
+        }
+        let tables = library.polarity_table(first, n, &settings, out.wanted(), pool, stop.unwrap_or(&NEVER));
+        out.set(tables.map_err(|problem| failure_of(&problem))?);
+        Ok(Code::Ok)
+    })
+}
+
+/// Frees a library; NULL is allowed.
+#[unsafe(no_mangle)]
+pub unsafe extern "C" fn bmom_library_free(library: *mut bmom_library) {
+    // SAFETY: the caller's promise goes on.
+    unsafe { free(library.cast::<Handle<MoleculeLibrary>>()) }
+}
+
+/// Opens a run through a file of structures or all files of a folder, in the order of their names; memory stays bounded
+/// whatever their size.
+/// Given: 1 measured (NULL: no measured dipoles are compared in this version); 2 format (BMOM_FORMAT_...); settings (NULL:
+/// defaults); threads; 3 path [text]; 4 resume_from [text of bmom_tabulation_position, or empty].
+/// Returned: 5 tabulation, NULL after any failure; free it with bmom_tabulation_free.
+/// Status: NOT_ALLOWED (measured; or resume_from of another run, 4018), FILE_MISSING, FILE_UNREADABLE, BAD_FORMAT,
+/// UNKNOWN_SELECTOR, WRONG_SELECTOR, OUT_OF_RANGE (threads or settings), NOT_UTF8, BAD_HANDLE, BUSY, NULL_POINTER.
+#[unsafe(no_mangle)]
+pub unsafe extern "C" fn bmom_tabulation_open(
+    measured: *const bmom_table,
+    format: i32,
+    settings: *const bmom_settings,
+    threads: i32,
+    path: *const c_char,
+    path_length: i64,
+    resume_from: *const c_char,
+    resume_from_length: i64,
+    tabulation: *mut *mut bmom_tabulation,
+) -> i32 {
+    guard(|| {
+        // SAFETY: the caller's promise about every pointer, stated in the header.
+        let arrays = unsafe { Arrays::promised() };
+        let out = arrays.cell(5, tabulation, std::ptr::null_mut())?;
+        none_measured(measured, 1)?;
+        let format = Selector(format).of_group("format").map_err(|failure| failure.argument(2))?;
+        let pool = pool(threads)?;
+        // SAFETY: as above. NULL for resume_from is an empty text.
+        let (settings, path, resume): (_, PathBuf, &str) = unsafe {
+            let resume = if resume_from.is_null() { "" } else { text_in(4, resume_from, resume_from_length)? };
+            (settings_of(settings)?, path_in(3, path, path_length)?, resume)
+        };
+        let run = Tabulation::open(&[path], format, settings, Some(resume)).map_err(|problem| {
+            failure_of(&problem).argument(match problem.code {
+                Code::NotAllowed => 4,
+                Code::OutOfRange => 0,
+                _ => 3,
+            })
+        })?;
+        let run = Run {
+            busy: AtomicBool::new(false),
+            process: std::process::id(),
+            threads: pool,
+            progress: run.progress(),
+            tabulation: UnsafeCell::new(run),
+        };
+        out.set(leak(run).cast());
+        Ok(Code::Ok)
+    })
+}
+
+/// The tables of the next records of a run.
+/// Given: 1 tabulation; stop (NULL: none); 2 max_molecules (from 1). Returned: 3 polarity; 4 bonds; 5 atoms: NULL where that
+/// table is not wanted; NULL is written after any failure. Free each with bmom_table_free.
+/// Status: END (no record is left), STOPPED (the next call goes on with the same records), FILE_MISSING, FILE_UNREADABLE,
+/// BAD_FORMAT (a file has changed), OUT_OF_RANGE, BUSY, OTHER_PROCESS, BAD_HANDLE, NULL_POINTER.
+#[unsafe(no_mangle)]
+pub unsafe extern "C" fn bmom_tabulation_next(
+    tabulation: *mut bmom_tabulation,
+    stop: *const bmom_stop,
+    max_molecules: i64,
+    polarity: *mut *mut bmom_table,
+    bonds: *mut *mut bmom_table,
+    atoms: *mut *mut bmom_table,
+) -> i32 {
+    guard(|| {
+        // SAFETY: the caller's promise about every pointer, stated in the header.
+        let out = TablesOut::new(&unsafe { Arrays::promised() }, 3, [polarity, bonds, atoms])?;
+        if max_molecules < 1 {
+            return Err(Failure::of(Code::OutOfRange, 2));
+        }
+        let most = usize::try_from(max_molecules).unwrap_or(usize::MAX);
+        // SAFETY: as above.
+        let (run, stop) = unsafe { (run_of(tabulation)?, stop_of(stop)?) };
+        let batch = run.alone(|tabulation| {
+            tabulation.next_batch(most, out.wanted(), run.threads, stop.unwrap_or(&NEVER))
+        })?;
+        match batch.map_err(|problem| failure_of(&problem))? {
+            Some(tables) => out.set(tables),
+            None => return Ok(Code::End),
+        }
+        Ok(Code::Ok)
+    })
+}
+
+/// How far a run has come; any thread may ask at any time, also while another is in bmom_tabulation_next.
+/// Given: 1 tabulation. Returned: 2 molecules_done; 3 bytes_done; 4 bytes_total (0: not known); each may be NULL.
+/// Status: BAD_HANDLE, NULL_POINTER.
+#[unsafe(no_mangle)]
+pub unsafe extern "C" fn bmom_tabulation_progress(
+    tabulation: *const bmom_tabulation,
+    molecules_done: *mut i64,
+    bytes_done: *mut i64,
+    bytes_total: *mut i64,
+) -> i32 {
+    guard(|| {
+        // SAFETY: the caller's promise about every pointer, stated in the header.
+        let arrays = unsafe { Arrays::promised() };
+        let cells = [
+            arrays.cell_if(2, molecules_done, i64::MIN)?,
+            arrays.cell_if(3, bytes_done, i64::MIN)?,
+            arrays.cell_if(4, bytes_total, i64::MIN)?,
+        ];
+        // SAFETY: as above.
+        let progress = unsafe { &run_of(tabulation)?.progress };
+        for (cell, done) in
+            cells.into_iter().zip([progress.records_done(), progress.bytes_done(), progress.bytes_total()])
+        {
+            cell.set(i64::try_from(done).unwrap_or(i64::MAX));
+        }
+        Ok(Code::Ok)
+    })
+}
+
+/// Where a run goes on after the last batch, as a text for resume_from of bmom_tabulation_open.
+/// Given: 1 tabulation. Returned: 2 text. Status: BUFFER_TOO_SMALL, BUSY, OTHER_PROCESS, BAD_HANDLE, NULL_POINTER.
+#[unsafe(no_mangle)]
+pub unsafe extern "C" fn bmom_tabulation_position(
+    tabulation: *const bmom_tabulation,
+    text: *mut c_char,
+    capacity: i64,
+    needed: *mut i64,
+) -> i32 {
+    guard(|| {
+        // SAFETY: the caller's promise about every pointer, stated in the header.
+        let (out, run) = unsafe { (TextOut::new(2, text, capacity, needed)?, run_of(tabulation)?) };
+        out.set(&run.alone(|tabulation| tabulation.position())?)
+    })
+}
+
+/// Ends a run and frees it; NULL is allowed.
+#[unsafe(no_mangle)]
+pub unsafe extern "C" fn bmom_tabulation_free(tabulation: *mut bmom_tabulation) {
+    // SAFETY: the caller's promise goes on.
+    unsafe { free(tabulation.cast::<Handle<Run>>()) }
+}
+
+/// Room for the three tables, each where it is wanted.
+struct TablesOut([(bool, Cell<*mut bmom_table>); 3]);
+
+impl TablesOut {
+    fn new(arrays: &Arrays, first: i32, pointers: [*mut *mut bmom_table; 3]) -> Result<Self, Failure> {
+        let room = |k: usize| -> Result<_, Failure> {
+            let argument = first + k as i32;
+            Ok((!pointers[k].is_null(), arrays.cell_if(argument, pointers[k], std::ptr::null_mut())?))
+        };
+        let out = [room(0)?, room(1)?, room(2)?];
+        let same = |a: usize, b: usize| !pointers[a].is_null() && pointers[a] == pointers[b];
+        if same(0, 1) || same(0, 2) || same(1, 2) {
+            return Err(Failure::of(Code::Overlap, first));
+        }
+        Ok(Self(out))
+    }
+
+    fn wanted(&self) -> Wanted {
+        let [polarity, bonds, atoms] = &self.0;
+        Wanted { polarity: polarity.0, bonds: bonds.0, atoms: atoms.0 }
+    }
+
+    fn set(&self, tables: Tables) {
+        for ((wanted, cell), table) in self.0.iter().zip([tables.polarity, tables.bonds, tables.atoms]) {
+            if *wanted {
+                cell.set(table_handle(table));
+            }
+        }
+    }
+}
+
+impl Run {
+    /// Lets one thread of the process that opened the run use it.
+    fn alone<T>(&self, job: impl FnOnce(&mut Tabulation) -> T) -> Result<T, Failure> {
+        if self.process != std::process::id() {
+            return Err(Failure::of(Code::OtherProcess, 1));
+        }
+        if self.busy.swap(true, Ordering::Acquire) {
+            return Err(Failure::of(Code::Busy, 1));
+        }
+        let _release = Release(&self.busy);
+        // SAFETY: the flag lets one thread in at a time.
+        Ok(job(unsafe { &mut *self.tabulation.get() }))
+    }
+}
+
+/// Gives a run free, also after a panic.
+struct Release<'a>(&'a AtomicBool);
+
+impl Drop for Release<'_> {
+    fn drop(&mut self) {
+        self.0.store(false, Ordering::Release);
+    }
+}
+
+fn none_measured(measured: *const bmom_table, argument: i32) -> Result<(), Failure> {
+    if measured.is_null() { Ok(()) } else { Err(Failure::of(Code::NotAllowed, argument)) }
+}
+
+/// # Safety
+/// As `handles::borrow`.
+unsafe fn library_of<'a>(library: *const bmom_library) -> Result<&'a MoleculeLibrary, Failure> {
+    // SAFETY: the caller's promise.
+    unsafe { borrow(library.cast::<Handle<MoleculeLibrary>>()) }.map_err(|failure| failure.argument(1))
+}
+
+/// # Safety
+/// As `handles::borrow`.
+unsafe fn run_of<'a>(tabulation: *const bmom_tabulation) -> Result<&'a Run, Failure> {
+    // SAFETY: the caller's promise.
+    unsafe { borrow(tabulation.cast::<Handle<Run>>()) }.map_err(|failure| failure.argument(1))
+}

@@ -1,0 +1,194 @@
+//! Atom types of PEOE and the charges that its sweeps start from.
+
+use crate::molecule::{Bonding, Molecule, Neighbours};
+use crate::status::{Code, Failure};
+
+macro_rules! atom_types {
+    ($($(#[doc = $doc:literal])* $kind:ident = $name:literal;)*) => {
+        /// The atom types: element and hybridization, told by the bond orders alone.
+        ///
+        /// Conventions, where the paper's σ scheme leaves them open:
+        /// - A triple bond or two double bonds make an atom digonal, one double bond makes it trigonal, single bonds
+        ///   alone tetragonal; a trivalent carbocation is trigonal. Aromatic rings count with their alternating double
+        ///   bonds. So the nitrogen of amides, anilines and pyrroles, the oxygen of furans and esters (the one with two
+        ///   single bonds) and ammonium nitrogen are tetragonal, nitro nitrogen and pyridine nitrogen are trigonal,
+        ///   thiophene sulfur is the one type of sulfur.
+        /// - Resonance-equivalent atoms share their formal charge and the type of the one with the double bond: N or O
+        ///   (or C-bound S) on one centre, of which one has a double bond to the centre, where the others carry −1
+        ///   (carboxylate, nitro, nitrate, carbonate: −1/2 or −2/3 each) or where the one with the double bond
+        ///   carries +1 and the others have a lone pair (amidinium, guanidinium, imidazolium about its C2).
+        #[derive(Clone, Copy, Debug, PartialEq, Eq)]
+        pub enum AtomType { $($(#[doc = $doc])* $kind,)* }
+
+        impl AtomType {
+            /// All types.
+            pub const ALL: &'static [AtomType] = &[$(AtomType::$kind,)*];
+
+            /// The name in the table.
+            pub const fn name(self) -> &'static str {
+                match self { $(AtomType::$kind => $name,)* }
+            }
+        }
+    };
+}
+
+atom_types! {
+    /// Hydrogen.
+    H = "H";
+    /// Carbon, sp3.
+    Cte = "Cte";
+    /// Carbon, sp2.
+    Ctr = "Ctr";
+    /// Carbon, sp.
+    Cdi = "Cdi";
+    /// Nitrogen, sp3.
+    Nte = "Nte";
+    /// Nitrogen, sp2.
+    Ntr = "Ntr";
+    /// Nitrogen, sp.
+    Ndi = "Ndi";
+    /// Oxygen, sp3.
+    Ote = "Ote";
+    /// Oxygen, sp2.
+    Otr = "Otr";
+    /// Fluorine.
+    F = "F";
+    /// Chlorine.
+    Cl = "Cl";
+    /// Bromine.
+    Br = "Br";
+    /// Iodine.
+    I = "I";
+    /// Sulfur with single bonds.
+    S = "S";
+}
+
+/// Types and starting charges, one an atom.
+pub(super) struct Start {
+    pub(super) types: Vec<AtomType>,
+    pub(super) charge: Vec<f64>,
+}
+
+/// The bonds of one atom, counted.
+#[derive(Clone, Copy, Default)]
+struct Around {
+    single: u32,
+    double: u32,
+    triple: u32,
+    other: u32,
+}
+
+pub(super) fn start(molecule: Molecule<'_>, bonding: &Bonding) -> Result<Start, Failure> {
+    let atoms = molecule.len();
+    let mut around = vec![Around::default(); atoms];
+    for (index, bond) in bonding.bonds.iter().enumerate() {
+        if bond.a == bond.b {
+            return Err(Failure::new(Code::BadBond).item(index));
+        }
+        for end in [bond.a, bond.b] {
+            let own = around.get_mut(end as usize).ok_or(Failure::new(Code::BadBond).item(index))?;
+            if bond.order == 1.0 {
+                own.single += 1;
+            } else if bond.order == 2.0 {
+                own.double += 1;
+            } else if bond.order == 3.0 {
+                own.triple += 1;
+            } else {
+                own.other += 1;
+            }
+        }
+    }
+    let formal: Vec<i32> = if bonding.formal_charge.len() == atoms {
+        bonding.formal_charge.clone()
+    } else {
+        molecule.formal_charge.map_or_else(|| vec![0; atoms], <[i32]>::to_vec)
+    };
+    let mut types = Vec::with_capacity(atoms);
+    for (atom, ((&element, own), &charge)) in molecule.atomic_number.iter().zip(&around).zip(&formal).enumerate() {
+        types.push(kind(element, *own, charge).ok_or(Failure::new(Code::NoData).item(atom))?);
+    }
+    let mut charge: Vec<f64> = formal.iter().map(|&q| f64::from(q)).collect();
+    share(molecule, bonding, &around, &formal, &mut types, &mut charge);
+    Ok(Start { types, charge })
+}
+
+fn kind(element: i32, around: Around, charge: i32) -> Option<AtomType> {
+    let Around { single, double, triple, other } = around;
+    if other > 0 {
+        return None;
+    }
+    let only_single = |most: u32| double + triple == 0 && single <= most;
+    let by_hybridization = |te, tr, di| match (double, triple) {
+        (0, 0) => te,
+        (1, 0) => Some(tr),
+        _ => di,
+    };
+    match element {
+        1 if only_single(1) => Some(AtomType::H),
+        6 if charge == 1 && only_single(3) => Some(AtomType::Ctr),
+        6 => by_hybridization(Some(AtomType::Cte), AtomType::Ctr, Some(AtomType::Cdi)),
+        7 => by_hybridization(Some(AtomType::Nte), AtomType::Ntr, Some(AtomType::Ndi)),
+        // There is no digonal oxygen: carbon monoxide written with a triple bond takes the trigonal one.
+        8 => by_hybridization(Some(AtomType::Ote), AtomType::Otr, Some(AtomType::Otr)),
+        9 if only_single(1) => Some(AtomType::F),
+        16 if only_single(2) => Some(AtomType::S),
+        17 if only_single(1) => Some(AtomType::Cl),
+        35 if only_single(1) => Some(AtomType::Br),
+        53 if only_single(1) => Some(AtomType::I),
+        _ => None,
+    }
+}
+
+/// Shares delocalised formal charge over the resonance-equivalent neighbours of one centre.
+fn share(
+    molecule: Molecule<'_>,
+    bonding: &Bonding,
+    around: &[Around],
+    formal: &[i32],
+    types: &mut [AtomType],
+    charge: &mut [f64],
+) {
+    if formal.iter().all(|&q| q == 0) {
+        return;
+    }
+    let neighbours = Neighbours::new(molecule.len(), &bonding.bonds);
+    let order = |bond: u32| bonding.bonds.get(bond as usize).map_or(0.0, |bond| bond.order);
+    // An atom joins one group only: the first centre takes it.
+    let mut shared = vec![false; molecule.len()];
+    for centre in 0..molecule.len() {
+        for element in [7, 8] {
+            let alike = |&&(atom, _): &&(u32, u32)| {
+                let at = atom as usize;
+                molecule.atomic_number.get(at) == Some(&element) && shared.get(at) == Some(&false)
+            };
+            let of_element: Vec<(u32, u32)> = neighbours.of(centre).iter().filter(alike).copied().collect();
+            let charge_of = |atom: u32| formal.get(atom as usize).copied().unwrap_or(0);
+            let all_single = |atom: u32| around.get(atom as usize).is_some_and(|own| own.double + own.triple == 0);
+            let doubles = |wanted: i32| -> Vec<u32> {
+                let fits = |&&(atom, bond): &&(u32, u32)| order(bond) == 2.0 && charge_of(atom) == wanted;
+                of_element.iter().filter(fits).map(|&(atom, _)| atom).collect()
+            };
+            let singles = |wanted: i32| -> Vec<u32> {
+                let fits =
+                    |&&(atom, bond): &&(u32, u32)| order(bond) == 1.0 && charge_of(atom) == wanted && all_single(atom);
+                of_element.iter().filter(fits).map(|&(atom, _)| atom).collect()
+            };
+            let (anion, cation) = ((doubles(0), singles(-1)), (doubles(1), singles(0)));
+            let (double, single) = if anion.0.is_empty() || anion.1.is_empty() { cation } else { anion };
+            if double.is_empty() || single.is_empty() {
+                continue;
+            }
+            let total: i32 = double.iter().chain(&single).map(|&atom| charge_of(atom)).sum();
+            let each = f64::from(total) / (double.len() + single.len()) as f64;
+            let like = double.first().and_then(|&atom| types.get(atom as usize)).copied();
+            for &atom in double.iter().chain(&single) {
+                let at = atom as usize;
+                if let (Some(own), Some(q), Some(taken), Some(like)) =
+                    (types.get_mut(at), charge.get_mut(at), shared.get_mut(at), like)
+                {
+                    (*own, *q, *taken) = (like, each, true);
+                }
+            }
+        }
+    }
+}

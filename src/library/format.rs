@@ -1,0 +1,163 @@
+//! Which format a file is in, told by its first bytes and never by its name.
+
+use super::lines::{decimal, integer};
+use super::record::Problem;
+use super::xyz::{atom_line, count_of};
+use crate::selectors::{FORMAT_BY_CONTENT, FORMAT_CTFILE, FORMAT_XYZ, Selector};
+use crate::status::Code;
+
+/// How many bytes are looked at.
+pub const HEAD: usize = 1 << 16;
+
+/// The format of a file from its first bytes (up to [`HEAD`] of them): `FORMAT_XYZ` or `FORMAT_CTFILE`. A format that the
+/// caller names is believed, unless the bytes are no text at all.
+///
+/// # Errors
+/// `BadFormat` with words that name what the file is, where that can be told.
+pub fn format_of(file: &str, head: &[u8], named: Selector) -> Result<Selector, Problem> {
+    let bad = |what: &str| Err(Problem::new(Code::BadFormat, format!("{file}: {what}")));
+    if let Some(what) = packed(head) {
+        return bad(&format!("the file is {what}, which is not read yet; unpack it first"));
+    }
+    if head.starts_with(b"\xFF\xFE") || head.starts_with(b"\xFE\xFF") {
+        return bad("the file is UTF-16 text; expected UTF-8 or Latin-1");
+    }
+    if head.contains(&0) {
+        return bad("the file is binary; expected an XYZ file, a molfile or an SD file");
+    }
+    match named {
+        FORMAT_XYZ | FORMAT_CTFILE => return Ok(named),
+        FORMAT_BY_CONTENT => {}
+        other => {
+            return Err(match other.of_group("format") {
+                Err(failure) => Problem::new(failure.code, format!("{file}: no format has the number {}", other.0)),
+                Ok(_) => Problem::new(Code::NotAllowed, format!("{file}: {} is not read yet", other.title())),
+            });
+        }
+    }
+    let text = String::from_utf8_lossy(head.strip_prefix(b"\xEF\xBB\xBF").unwrap_or(head));
+    if let Some(what) = marked_up(&text) {
+        return bad(what);
+    }
+    let lines = lines_of(&text);
+    if lines.iter().all(|line| line.trim().is_empty()) {
+        return bad("the file is empty");
+    }
+    if is_ctfile(&lines) {
+        return Ok(FORMAT_CTFILE);
+    }
+    if is_xyz(&lines) {
+        return Ok(FORMAT_XYZ);
+    }
+    if has_ctfile_marks(&lines) {
+        return Ok(FORMAT_CTFILE);
+    }
+    bad("the content is in no format that is read here; expected an XYZ file, a molfile or an SD file")
+}
+
+fn packed(head: &[u8]) -> Option<&'static str> {
+    const MAGIC: &[(&[u8], &str)] = &[
+        (b"\x1F\x8B", "gzip-compressed"),
+        (b"PK\x03\x04", "a zip archive"),
+        (b"BZh", "bzip2-compressed"),
+        (b"\xFD7zXZ\x00", "xz-compressed"),
+        (b"\x28\xB5\x2F\xFD", "zstd-compressed"),
+    ];
+    MAGIC.iter().find(|(magic, _)| head.starts_with(magic)).map(|(_, what)| *what)
+}
+
+fn marked_up(text: &str) -> Option<&'static str> {
+    let start = text.trim_start();
+    if !start.starts_with('<') {
+        return None;
+    }
+    if text.contains("<cml") || text.contains("<molecule") || text.contains(":molecule") || text.contains("/cml") {
+        return Some("the file is CML (chemical markup language), which is not read yet");
+    }
+    let marked = start.starts_with("<?") || start.starts_with("<!") || start.ends_with('>');
+    marked.then_some("the file is XML or HTML; expected an XYZ file, a molfile or an SD file")
+}
+
+/// Lines with any newline.
+fn lines_of(text: &str) -> Vec<&str> {
+    let mut lines = Vec::new();
+    let mut rest = text;
+    while let Some(at) = rest.find(['\n', '\r']) {
+        let (line, tail) = rest.split_at(at);
+        lines.push(line);
+        rest = tail.strip_prefix("\r\n").or_else(|| tail.get(1..)).unwrap_or("");
+    }
+    lines.push(rest);
+    lines
+}
+
+fn has_version(line: &str) -> bool {
+    line.contains("V2000") || line.contains("V3000")
+}
+
+/// The fourth line is a counts line: it carries a version, or two counts and then an atom by columns.
+fn is_ctfile(lines: &[&str]) -> bool {
+    let Some(counts) = lines.get(3) else { return false };
+    if has_version(counts) && counts.get(..6).is_some_and(|c| c.bytes().all(|b| b == b' ' || b.is_ascii_digit())) {
+        return true;
+    }
+    let field = |from: usize, to: usize| counts.get(from..to).and_then(integer).is_some_and(|n| n >= 0);
+    let atom = |line: &&str| {
+        let symbol = line.get(31..34).map(str::trim).unwrap_or("");
+        let letters = !symbol.is_empty() && symbol.bytes().all(|byte| byte.is_ascii_alphabetic());
+        letters && [(0, 10), (10, 20), (20, 30)].iter().all(|&(a, b)| line.get(a..b).and_then(decimal).is_some())
+    };
+    field(0, 3) && field(3, 6) && lines.get(4).is_some_and(atom)
+}
+
+/// A count, a comment and an atom in the first lines that are not blank, or a frame further on after a broken one.
+fn is_xyz(lines: &[&str]) -> bool {
+    lines.windows(3).any(|w| match w {
+        [count, _, atom] => count_of(count).is_some_and(|n| n > 0) && atom_line(atom).is_ok(),
+        _ => false,
+    })
+}
+
+/// A counts line somewhere, or the end of a record: the first record is broken, the next ones may not be.
+fn has_ctfile_marks(lines: &[&str]) -> bool {
+    let marked = |line: &&str| line.trim_end() == "$$$$" || line.trim_end() == "M  END" || has_version(line);
+    lines.iter().any(marked)
+}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+
+    fn told(head: &[u8]) -> Result<Selector, Problem> {
+        format_of("f", head, FORMAT_BY_CONTENT)
+    }
+
+    #[test]
+    fn formats_are_told_by_content() {
+        assert_eq!(told(b"1\n\nHe 0 0 0\n"), Ok(FORMAT_XYZ));
+        assert_eq!(told(b"\xEF\xBB\xBF\n1\r\rHe 0 0 0"), Ok(FORMAT_XYZ));
+        assert_eq!(told(b"rubbish\n1\nV2000\nHe 0 0 0\n"), Ok(FORMAT_XYZ));
+        assert_eq!(told(b"2\n\n\n  1  0  0  0  0  0  0  0  0  0999 V2000\n"), Ok(FORMAT_CTFILE));
+        assert_eq!(told(b"\n\n\n  1  0\n    0.0000    0.0000    0.0000 He  0  0\n"), Ok(FORMAT_CTFILE));
+        assert_eq!(told(b"t\nno counts line\n$$$$\n"), Ok(FORMAT_CTFILE));
+    }
+
+    #[test]
+    fn what_is_not_read_is_named() {
+        for (head, words) in [
+            (&b"\x1F\x8B\x08rest"[..], "gzip"),
+            (b"<?xml version=\"1.0\"?><cml/>", "CML"),
+            (b"<molecule id=\"m1\">", "CML"),
+            (b"<!DOCTYPE html><p>x</p>", "HTML"),
+            (b"\xFF\xFE1\x00", "UTF-16"),
+            (b"\x7FELF\x00\x00", "binary"),
+            (b" \n\n", "empty"),
+            (b"name,value\na,1\n", "no format"),
+            (b"2\n\nHe 0 0\n", "no format"),
+        ] {
+            let problem = told(head).unwrap_err();
+            assert_eq!(problem.code, Code::BadFormat);
+            assert!(problem.message.contains(words), "{}", problem.message);
+        }
+    }
+}

@@ -1,0 +1,406 @@
+//! The rows of one record: what is computed from it, and in which words it is told.
+
+use super::formula::{atom_label, hill_formula};
+use super::fragments::{Computed, compute};
+use super::kinds::{Kind, kind_of};
+use super::polarity_table::{Tables, Wanted};
+use super::record::{Broken, Entry, Record};
+use super::remarks::detail;
+use super::settings::Settings;
+use super::table::Cell;
+use crate::bonds::find::{find_bonds, given_bonds};
+use crate::bonds::{BondPolarity, bond_length, bond_polarity, ionic_character};
+use crate::catalogue::DATA_VERSION;
+use crate::elements::{covalent_radius, symbol, vdw_radius};
+use crate::molecule::{Bond, Bonding};
+use crate::quantity::Quantity;
+use crate::selectors::{self, Selector};
+use crate::status::{Code, Failure};
+
+/// The bonds of a record: as stated, else found from the coordinates.
+pub(super) fn bonding_of(record: &Record) -> Result<Bonding, Failure> {
+    match &record.bonds {
+        Some(bonds) => given_bonds(record.molecule(), bonds),
+        None => find_bonds(record.molecule(), selectors::BONDS_ALTERNATING),
+    }
+}
+
+/// Columns of the polarity table before `charge_model`.
+const UP_TO_CHARGES: usize = 24;
+
+/// Adds the rows of one record to the tables.
+pub(super) fn add_rows(
+    entry: &Entry,
+    bonding: Option<&Result<Bonding, Failure>>,
+    settings: &Settings,
+    wanted: Wanted,
+    tables: &mut Tables,
+) {
+    let key = entry.place().key();
+    let compound = compound_of(entry, settings);
+    match entry {
+        Entry::Broken(broken) => {
+            if wanted.polarity {
+                broken_row(broken, &key, &compound, settings, tables);
+            }
+        }
+        Entry::Molecule(record) => {
+            let own;
+            let bonding = match bonding {
+                Some(bonding) => bonding,
+                None => {
+                    own = bonding_of(record);
+                    &own
+                }
+            };
+            let row = Row { key: &key, compound: &compound, record, settings };
+            match bonding {
+                Ok(bonding) => {
+                    let kind = kind_of(record, bonding);
+                    let computed = compute(record, bonding, &kind, settings);
+                    if wanted.polarity {
+                        row.polarity(bonding, &kind, &computed, tables);
+                    }
+                    if wanted.bonds {
+                        row.bonds(bonding, &kind, tables);
+                    }
+                    if wanted.atoms {
+                        row.atoms(Some((bonding, &kind, &computed)), tables);
+                    }
+                }
+                Err(failure) => {
+                    if wanted.polarity {
+                        row.failed(*failure, tables);
+                    }
+                    if wanted.atoms {
+                        row.atoms(None, tables);
+                    }
+                }
+            }
+        }
+    }
+}
+
+/// The name of the compound: the title, else the data item that the settings name, else file stem and number.
+fn compound_of(entry: &Entry, settings: &Settings) -> String {
+    if !entry.title().is_empty() {
+        return entry.title().to_owned();
+    }
+    if let Entry::Molecule(record) = entry {
+        let named = record.item(&settings.name_item).map(str::trim).filter(|name| !name.is_empty());
+        if let Some(name) = named {
+            return name.lines().next().unwrap_or(name).to_owned();
+        }
+    }
+    let place = entry.place();
+    let file = place.file.rsplit(['/', '\\']).next().unwrap_or("");
+    let stem = file.rsplit_once('.').map_or(file, |(stem, _)| if stem.is_empty() { file } else { stem });
+    format!("{stem} {}", place.number)
+}
+
+fn broken_row(broken: &Broken, key: &str, compound: &str, settings: &Settings, tables: &mut Tables) {
+    let code = Code::BrokenRecord;
+    let text = broken.text();
+    let mut cells = vec![Cell::Text(key), Cell::Text(compound)];
+    cells.resize(UP_TO_CHARGES, Cell::None(code));
+    cells.extend([
+        Cell::Text(settings.charge_model.name()),
+        Cell::Text(DATA_VERSION),
+        Cell::Text(code.name()),
+        Cell::Text(&text),
+    ]);
+    tables.polarity.push_row(&cells);
+}
+
+/// The bond of greatest |Δχ|.
+pub(super) struct StrongestBond {
+    /// 0-based atoms, a < b.
+    pub a: usize,
+    pub b: usize,
+    /// `C1=O2`; empty where no bond has a difference.
+    pub label: String,
+    /// |Δχ|.
+    pub delta_chi: f64,
+    /// The more electronegative atom, 0-based.
+    pub negative: Option<usize>,
+}
+
+/// Bond order as the tables show it: aromatic bonds 1.5, not the alternating orders that the models need.
+fn shown_order(bond: Bond, aromatic: bool) -> f64 {
+    if aromatic { 1.5 } else { bond.order }
+}
+
+fn order_sign(order: f64) -> &'static str {
+    if order == 1.0 {
+        "-"
+    } else if order == 2.0 {
+        "="
+    } else if order == 3.0 {
+        "≡"
+    } else if order == 1.5 {
+        "≈"
+    } else {
+        "~"
+    }
+}
+
+/// The bond of greatest |Δχ|, of equal ones that with the lowest atom numbers.
+///
+/// # Errors
+/// `NoBonds` · `NoData` where the scale has no value for any bond.
+pub(super) fn strongest_bond(record: &Record, bonding: &Bonding, settings: &Settings) -> Result<StrongestBond, Code> {
+    let mut strongest: Option<(usize, Bond, BondPolarity)> = None;
+    for (i, &bond) in bonding.bonds.iter().enumerate() {
+        let Ok(polarity) = polarity_of(record, bond, settings) else { continue };
+        let size = polarity.delta_chi.value.abs();
+        if strongest.is_none_or(|(_, _, best)| size > best.delta_chi.value.abs()) {
+            strongest = Some((i, bond, polarity));
+        }
+    }
+    let Some((i, bond, polarity)) = strongest else {
+        return Err(if bonding.bonds.is_empty() { Code::NoBonds } else { Code::NoData });
+    };
+    let (a, b) = (bond.a as usize, bond.b as usize);
+    let negative = match polarity.negative_end {
+        selectors::END_A => Some(a),
+        selectors::END_B => Some(b),
+        _ => None,
+    };
+    let order = shown_order(bond, bonding.aromatic.get(i).copied().unwrap_or(false));
+    let label = negative.map_or(String::new(), |_| {
+        let atom = |atom| atom_label(&record.atomic_number, atom);
+        format!("{}{}{}", atom(a), order_sign(order), atom(b))
+    });
+    Ok(StrongestBond { a, b, label, delta_chi: polarity.delta_chi.value.abs(), negative })
+}
+
+fn polarity_of(record: &Record, bond: Bond, settings: &Settings) -> Result<BondPolarity, Failure> {
+    let z = |atom: u32| record.atomic_number.get(atom as usize).copied().unwrap_or(0);
+    bond_polarity(settings.electronegativity, settings.polar_from, settings.ionic_from, z(bond.a), z(bond.b))
+}
+
+fn number(value: Result<f64, Code>) -> Cell<'static> {
+    value.map_or_else(Cell::None, Cell::Number)
+}
+
+fn count(value: usize) -> Cell<'static> {
+    i32::try_from(value).map_or(Cell::None(Code::TooLarge), Cell::Integer)
+}
+
+struct Row<'a> {
+    key: &'a str,
+    compound: &'a str,
+    record: &'a Record,
+    settings: &'a Settings,
+}
+
+impl Row<'_> {
+    fn polarity(&self, bonding: &Bonding, kind: &Kind, computed: &Computed, tables: &mut Tables) {
+        let record = self.record;
+        let formula = hill_formula(&record.atomic_number);
+        let strongest = strongest_bond(record, bonding, self.settings);
+        let detail = detail(record, bonding, kind, computed, strongest.as_ref().ok(), self.settings);
+        let net_charge = if kind.lacks_hydrogens && record.formal_charge.is_none() {
+            Cell::None(Code::HydrogensMissing)
+        } else {
+            i32::try_from(kind.net_charge).map_or(Cell::None(Code::TooLarge), Cell::Integer)
+        };
+        let mut cells = vec![
+            Cell::Text(self.key),
+            Cell::Text(self.compound),
+            Cell::Text(&formula),
+            count(record.atomic_number.len()),
+            net_charge,
+            count(kind.fragments),
+            count(kind.charge_sites),
+            Cell::Text(kind.structure.name()),
+        ];
+        match &computed.verdict {
+            Ok(verdict) => {
+                let dipole = &verdict.dipole;
+                let [[xx, xy, xz], [_, yy, yz], [_, _, zz]] = dipole.covariance;
+                let not_known = |u: f64| if u.is_nan() { Cell::None(Code::NoData) } else { Cell::Number(u) };
+                cells.push(Cell::Number(dipole.magnitude.value));
+                cells.push(not_known(dipole.magnitude.u));
+                cells.extend(dipole.vector.map(Cell::Number));
+                cells.extend([xx, yy, zz, xy, xz, yz].map(not_known));
+                cells.push(Cell::Text(verdict.polarity.title()));
+            }
+            Err(failure) => cells.resize(cells.len() + 12, Cell::None(failure.code)),
+        }
+        let negative;
+        match &strongest {
+            Ok(bond) => {
+                negative = bond.negative.map_or(String::new(), |atom| atom_label(&record.atomic_number, atom));
+                let charge = bond.negative.map_or(Err(Code::NoData), |atom| computed.charge(atom).map(|q| q.value));
+                cells.extend([Cell::Text(&bond.label), Cell::Number(bond.delta_chi), Cell::Text(&negative)]);
+                cells.push(number(charge));
+            }
+            Err(code) => cells.extend([Cell::None(*code); 4]),
+        }
+        self.finish(cells, computed.status(), &detail, tables);
+    }
+
+    /// The row of a record whose bonds cannot be had.
+    fn failed(&self, failure: Failure, tables: &mut Tables) {
+        let record = self.record;
+        let formula = hill_formula(&record.atomic_number);
+        let at = usize::try_from(failure.item).ok();
+        let mut detail = failure.code.text().to_owned();
+        if let Some(item) = at {
+            match failure.code {
+                Code::BadBond => detail.push_str(&format!(" (bond {})", item + 1)),
+                _ => detail.push_str(&format!(" ({})", atom_label(&record.atomic_number, item))),
+            }
+        }
+        let mut cells = vec![Cell::Text(self.key), Cell::Text(self.compound), Cell::Text(&formula)];
+        cells.push(count(record.atomic_number.len()));
+        cells.resize(UP_TO_CHARGES, Cell::None(failure.code));
+        self.finish(cells, failure.code, &detail, tables);
+    }
+
+    /// The last columns: model, versions, status, detail, carried items.
+    fn finish<'b>(&'b self, mut cells: Vec<Cell<'b>>, status: Code, detail: &'b str, tables: &mut Tables) {
+        cells.extend([
+            Cell::Text(self.settings.charge_model.name()),
+            Cell::Text(DATA_VERSION),
+            Cell::Text(status.name()),
+            Cell::Text(detail),
+        ]);
+        let carried = self.settings.carried();
+        cells.extend(carried.iter().map(|(item, _)| match self.record.item(item) {
+            Some(value) => Cell::Text(value),
+            None => Cell::None(Code::Missing),
+        }));
+        tables.polarity.push_row(&cells);
+    }
+
+    fn bonds(&self, bonding: &Bonding, kind: &Kind, tables: &mut Tables) {
+        let record = self.record;
+        let states = states_of(record, bonding, self.settings.covalent_radii);
+        for (i, &bond) in bonding.bonds.iter().enumerate() {
+            let z = |atom: u32| record.atomic_number.get(atom as usize).copied().unwrap_or(0);
+            let order = shown_order(bond, bonding.aromatic.get(i).copied().unwrap_or(false));
+            let length = if kind.drawing { Err(Code::FlatDrawing) } else { length_of(record, bond) };
+            let expected = expected_length(record, &states, bond, order, self.settings).map_err(|failure| failure.code);
+            let deviation = match (length, expected) {
+                (Ok(length), Ok(expected)) => Ok(length - expected.value),
+                (Err(code), _) | (_, Err(code)) => Err(code),
+            };
+            let polarity = polarity_of(record, bond, self.settings).map_err(|failure| failure.code);
+            let ionic = polarity.and_then(|p| {
+                ionic_character(self.settings.ionic_law, p.delta_chi).map(|q| q.value).map_err(|failure| failure.code)
+            });
+            let negative = match polarity.map(|p| p.negative_end) {
+                Ok(selectors::END_A) => atom_label(&record.atomic_number, bond.a as usize),
+                Ok(selectors::END_B) => atom_label(&record.atomic_number, bond.b as usize),
+                _ => String::new(),
+            };
+            let u = expected.and_then(|q| if q.u.is_nan() { Err(Code::NoData) } else { Ok(q.u) });
+            tables.bonds.push_row(&[
+                Cell::Text(self.key),
+                Cell::Text(self.compound),
+                count(bond.a as usize + 1),
+                count(bond.b as usize + 1),
+                Cell::Text(symbol(z(bond.a)).unwrap_or("")),
+                Cell::Text(symbol(z(bond.b)).unwrap_or("")),
+                Cell::Number(order),
+                number(length),
+                number(expected.map(|q| q.value)),
+                number(u),
+                number(deviation),
+                number(polarity.map(|p| p.delta_chi.value)),
+                polarity.map_or_else(Cell::None, |_| Cell::Text(&negative)),
+                number(ionic),
+                polarity.map_or_else(Cell::None, |p| Cell::Text(p.class.title())),
+            ]);
+        }
+    }
+
+    fn atoms(&self, found: Option<(&Bonding, &Kind, &Computed)>, tables: &mut Tables) {
+        let record = self.record;
+        let states = found.map(|(bonding, _, _)| states_of(record, bonding, self.settings.covalent_radii));
+        for (atom, &z) in record.atomic_number.iter().enumerate() {
+            let drawing = found.is_some_and(|(_, kind, _)| kind.drawing);
+            let xyz = record.xyz.get(atom).copied().unwrap_or([f64::NAN; 3]);
+            let xyz = xyz.map(|x| if drawing { Cell::None(Code::FlatDrawing) } else { Cell::Number(x) });
+            let charge = found.map_or(Err(Code::NoBonds), |(_, _, computed)| computed.charge(atom));
+            let u = charge.and_then(|q| if q.u.is_nan() { Err(Code::NoData) } else { Ok(q.u) });
+            let state = states.as_ref().and_then(|states| states.get(atom)).copied();
+            let state = state.unwrap_or(selectors::STATE_AS_LISTED);
+            let value = |radius: Result<Quantity, Failure>| radius.map(|q| q.value).map_err(|failure| failure.code);
+            tables.atoms.push_row(&[
+                Cell::Text(self.key),
+                Cell::Text(self.compound),
+                count(atom + 1),
+                Cell::Text(symbol(z).unwrap_or("")),
+                xyz[0],
+                xyz[1],
+                xyz[2],
+                number(charge.map(|q| q.value)),
+                number(u),
+                number(value(covalent_radius(self.settings.covalent_radii, z, state))),
+                number(value(vdw_radius(self.settings.vdw_radii, z))),
+            ]);
+        }
+    }
+}
+
+fn length_of(record: &Record, bond: Bond) -> Result<f64, Code> {
+    let point = |atom: u32| record.xyz.get(atom as usize).ok_or(Code::Missing);
+    let (a, b) = (point(bond.a)?, point(bond.b)?);
+    let d = [a[0] - b[0], a[1] - b[1], a[2] - b[2]];
+    Ok((d[0] * d[0] + d[1] * d[1] + d[2] * d[2]).sqrt())
+}
+
+fn expected_length(
+    record: &Record,
+    states: &[Selector],
+    bond: Bond,
+    order: f64,
+    settings: &Settings,
+) -> Result<Quantity, Failure> {
+    if order == 0.0 {
+        return Err(Failure::new(Code::NoData));
+    }
+    let z = |atom: u32| record.atomic_number.get(atom as usize).copied().unwrap_or(0);
+    let state = |atom: u32| states.get(atom as usize).copied().unwrap_or(selectors::STATE_AS_LISTED);
+    bond_length(
+        settings.covalent_radii,
+        selectors::LENGTH_BY_ORDER,
+        settings.electronegativity,
+        z(bond.a),
+        state(bond.a),
+        z(bond.b),
+        state(bond.b),
+        order,
+    )
+}
+
+/// The hybridization that picks a carbon radius from Cordero's table: sp with a triple or two double bonds, sp2 with one
+/// double or aromatic bond, else sp3. Other tables and elements have one radius.
+fn states_of(record: &Record, bonding: &Bonding, radii: Selector) -> Vec<Selector> {
+    if radii != selectors::RADII_CORDERO_2008 {
+        return vec![selectors::STATE_AS_LISTED; record.atomic_number.len()];
+    }
+    let mut unsaturation = vec![0_u32; record.atomic_number.len()];
+    for bond in &bonding.bonds {
+        let more = match bond.order {
+            order if order >= 3.0 => 2,
+            order if order > 1.0 => 1,
+            _ => 0,
+        };
+        for atom in [bond.a, bond.b] {
+            if let Some(sum) = unsaturation.get_mut(atom as usize) {
+                *sum += more;
+            }
+        }
+    }
+    let state = |(&z, &sum): (&i32, &u32)| match (z, sum) {
+        (6, 0) => selectors::STATE_SP3,
+        (6, 1) => selectors::STATE_SP2,
+        (6, _) => selectors::STATE_SP,
+        _ => selectors::STATE_AS_LISTED,
+    };
+    record.atomic_number.iter().zip(&unsaturation).map(state).collect()
+}

@@ -1,0 +1,190 @@
+//! XYZ files: any number of frames, each a count, a comment and that many atom lines.
+//!
+//! There is no written standard; what is read here is common practice. An atom line is an element (symbol in any case,
+//! symbol with a label number, or atomic number; D and T are hydrogen) and three coordinates in Å; further columns are
+//! left unread. Blank lines may stand between frames. A comment is never an instruction: a short plain one is the title,
+//! any other is kept as the data item `comment`. Charges and bonds are not stated.
+//!
+//! A frame that cannot be read costs itself: reading goes on at the next place that looks like a frame.
+
+use std::io::{BufRead, Result};
+
+use super::lines::{Line, Lines, decimal, integer, quoted};
+use super::record::{Broken, Entry, Place, Record};
+use crate::tables::element_by_text;
+
+/// Most atoms of one frame.
+pub const MOST_ATOMS: i64 = 50_000_000;
+/// Largest coordinate [Å].
+pub(super) const LARGEST_COORDINATE_A: f64 = 1e9;
+const LONGEST_TITLE: usize = 80;
+
+/// Reads frames one by one.
+#[derive(Debug)]
+pub(super) struct XyzReader<R> {
+    pub lines: Lines<R>,
+    file: String,
+    /// Frames handed out.
+    pub number: u64,
+}
+
+impl<R: BufRead> XyzReader<R> {
+    pub fn new(lines: Lines<R>, file: &str, number: u64) -> Self {
+        Self { lines, file: file.to_owned(), number }
+    }
+
+    /// The next frame, read or broken; `None` at the end.
+    pub fn next(&mut self) -> Result<Option<Entry>> {
+        let count_line = loop {
+            match self.lines.take()? {
+                None => return Ok(None),
+                Some(line) if line.text.trim().is_empty() => {}
+                Some(line) => break line,
+            }
+        };
+        self.number += 1;
+        let place = Place { file: self.file.clone(), number: self.number, line: count_line.number };
+        let mut record = Record { place, ..Record::default() };
+        match self.frame(&count_line, &mut record)? {
+            Ok(()) => Ok(Some(Entry::Molecule(Box::new(record)))),
+            Err((line, message)) => {
+                self.go_to_next_frame()?;
+                Ok(Some(Entry::Broken(Broken { place: record.place, title: record.title, line, message })))
+            }
+        }
+    }
+
+    fn frame(&mut self, count_line: &Line, record: &mut Record) -> Result<std::result::Result<(), (u64, String)>> {
+        let count = match count_of(&count_line.text) {
+            Some(count) => count,
+            None => {
+                let said = quoted(&count_line.text);
+                return Ok(Err((count_line.number, format!("expected the number of atoms, found {said}"))));
+            }
+        };
+        if !(1..=MOST_ATOMS).contains(&count) {
+            let message = format!("the number of atoms is {count}; expected 1 to {MOST_ATOMS}");
+            return Ok(Err((count_line.number, message)));
+        }
+        let Some(comment) = self.lines.take()? else {
+            return Ok(Err((count_line.number, format!("the file ends before the {count} atoms stated"))));
+        };
+        take_comment(&comment, record);
+        for read in 0..count {
+            let Some(line) = self.lines.take()? else {
+                let message = format!("the file ends after {read} of the {count} atoms stated");
+                return Ok(Err((comment.number + u64::try_from(read).unwrap_or(0), message)));
+            };
+            match atom_line(&line.text) {
+                Ok((z, xyz)) => {
+                    record.atomic_number.push(z);
+                    record.xyz.push(xyz);
+                }
+                Err(wrong) => {
+                    let number = line.number;
+                    self.lines.put_back(line);
+                    return Ok(Err((number, format!("atom {} of {count}: {wrong}", read + 1))));
+                }
+            }
+        }
+        // One atom line more: the count is wrong, and nobody can say which atoms are meant.
+        if let Some(line) = self.lines.peek(0)? {
+            if count_of(&line.text).is_none() && atom_line(&line.text).is_ok() {
+                let message = format!("more atom lines follow than the {count} stated in line {}", count_line.number);
+                return Ok(Err((line.number, message)));
+            }
+        }
+        Ok(Ok(()))
+    }
+
+    /// Leaves lines out up to a count that is followed, after its comment, by an atom.
+    fn go_to_next_frame(&mut self) -> Result<()> {
+        while let Some(line) = self.lines.peek(0)? {
+            let counts = count_of(&line.text).is_some_and(|count| (1..=MOST_ATOMS).contains(&count));
+            if counts && self.lines.peek(2)?.is_some_and(|third| atom_line(&third.text).is_ok()) {
+                return Ok(());
+            }
+            self.lines.take()?;
+        }
+        Ok(())
+    }
+}
+
+/// The count of a count line: one whole number and nothing else.
+pub(super) fn count_of(text: &str) -> Option<i64> {
+    let mut words = text.split_whitespace();
+    let count = integer(words.next()?)?;
+    words.next().is_none().then_some(count)
+}
+
+/// Atomic number and coordinates of an atom line, or what is wrong with it.
+pub(super) fn atom_line(text: &str) -> std::result::Result<(i32, [f64; 3]), String> {
+    let mut words = text.split_whitespace();
+    let Some(element) = words.next() else {
+        return Err("expected an element and three coordinates, found a blank line".to_owned());
+    };
+    let mut xyz = [0.0; 3];
+    for slot in &mut xyz {
+        let Some(word) = words.next() else {
+            return Err(format!("expected an element and three coordinates, found {}", quoted(text)));
+        };
+        match decimal(word) {
+            Some(x) if x.abs() <= LARGEST_COORDINATE_A => *slot = x,
+            Some(_) => return Err(format!("the coordinate {} is beyond 1e9 Å", quoted(word))),
+            None => return Err(format!("the coordinate {} is no decimal number", quoted(word))),
+        }
+    }
+    let z = element_of(element).ok_or_else(|| format!("there is no element {}", quoted(element)))?;
+    Ok((z, xyz))
+}
+
+/// Atomic number of a symbol in any case, of a symbol with a label number (`C12`), or of a number from 1 to 118.
+fn element_of(word: &str) -> Option<i32> {
+    if word.bytes().all(|byte| byte.is_ascii_digit()) {
+        let z: i32 = word.parse().ok()?;
+        return (1..=118).contains(&z).then_some(z);
+    }
+    let symbol = word.trim_end_matches(|c: char| c.is_ascii_digit());
+    if symbol.len() > 2 {
+        return None;
+    }
+    element_by_text(symbol).ok()
+}
+
+fn take_comment(comment: &Line, record: &mut Record) {
+    let text = comment.text.trim();
+    if text.is_empty() {
+        return;
+    }
+    let short = text.chars().count() <= LONGEST_TITLE && !comment.cut;
+    let plain = !text.contains(['=', '"', '\t']) && !text.chars().any(char::is_control);
+    let first_is_number = text.split_whitespace().next().is_some_and(|word| decimal(word).is_some());
+    if short && plain && !first_is_number && atom_line(text).is_err() {
+        record.title = text.to_owned();
+    } else {
+        record.data.push(("comment".to_owned(), text.to_owned()));
+    }
+}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+
+    #[test]
+    fn elements_as_programs_write_them() {
+        for (word, z) in [("CL", 17), ("cl", 17), ("Cl", 17), ("6", 6), ("D", 1), ("t", 1), ("C12", 6), ("He1", 2)] {
+            assert_eq!(element_of(word), Some(z), "{word}");
+        }
+        for word in ["X", "Zz", "0", "119", "1C", "Bq", "-6", "", "12a"] {
+            assert_eq!(element_of(word), None, "{word}");
+        }
+    }
+
+    #[test]
+    fn further_columns_are_left_unread() {
+        assert_eq!(atom_line(" O 0. -.5 1.0D0 -0.834 text"), Ok((8, [0.0, -0.5, 1.0])));
+        assert!(atom_line("O 0 0").unwrap_err().contains("three coordinates"));
+        assert!(atom_line("O 0 0 nan").unwrap_err().contains("\"nan\""));
+        assert!(atom_line("O 0 0 2e9").unwrap_err().contains("1e9"));
+    }
+}
