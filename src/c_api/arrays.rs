@@ -192,7 +192,6 @@ impl<T: Copy> Out<T> {
         }
     }
 }
-}
 
 /// Input column of values with uncertainties (NaN where the column of uncertainties is left out).
 #[derive(Clone, Copy)]

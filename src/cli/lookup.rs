@@ -132,7 +132,7 @@ fn plain(
         let unit = if argument.unit.is_empty() { String::new() } else { format!(" {}", argument.unit) };
         match value {
             Value::Number(q) if q.u.is_nan() => {
-                writeln!(out, "{} = {}{unit}  (no uncertainty)", argument.name, show::quantity(*q))?;
+                writeln!(out, "{} = {}{unit}  ({})", argument.name, show::quantity(*q), without_u(function, given))?;
             }
             Value::Number(q) => writeln!(out, "{} = {}{unit}", argument.name, show::quantity(*q))?,
             Value::Integer(i) => writeln!(out, "{} = {i}", argument.name)?,
@@ -156,6 +156,17 @@ fn plain(
         }
     }
     Ok(())
+}
+
+/// Why a result has no uncertainty: inputs without one, or nothing published.
+fn without_u(function: &Function, given: &[(&str, &str)]) -> String {
+    let missing: Vec<&str> = function
+        .arguments
+        .iter()
+        .map(|argument| argument.uncertainty)
+        .filter(|u| !u.is_empty() && !given.iter().any(|(name, _)| name == u))
+        .collect();
+    if missing.is_empty() { "no uncertainty published".to_owned() } else { format!("no uncertainty without {}", missing.join(", ")) }
 }
 
 /// What stands behind the very value, for a look-up in a table.

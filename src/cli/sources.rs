@@ -91,14 +91,15 @@ impl Sources {
     }
 }
 
+/// Family names: one, two, or the first with "et al."; of several works the first.
 fn first_author(source: &Source) -> String {
-    let mut authors = source.author.split(", ");
-    let first = authors.next().unwrap_or("");
-    let family = first.rsplit(' ').next().unwrap_or(first);
-    if authors.next().is_some() && source.author.matches(", ").count() > 1 {
-        format!("{family} et al.")
-    } else {
-        family.to_owned()
+    let work = source.author.split(';').next().unwrap_or("");
+    let family = |name: &str| name.rsplit(' ').next().unwrap_or(name).to_owned();
+    let names: Vec<String> = work.split(", ").map(family).collect();
+    match names.as_slice() {
+        [one, two] => format!("{one} and {two}"),
+        [first, _, ..] => format!("{first} et al."),
+        _ => names.concat(),
     }
 }
 
