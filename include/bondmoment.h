@@ -232,6 +232,11 @@
 
 
 /*
+ Structures in memory with their bonds. It never changes once it is made and may be shared by threads.
+ */
+typedef struct bmom_library bmom_library;
+
+/*
  Settings of a run: what may be chosen stands in the catalogue under "settings". They freeze at first use and may then
  be shared by threads.
  */
@@ -246,6 +251,11 @@ typedef struct bmom_stop bmom_stop;
  A table of results: columns with names and types that never change; it may be shared by threads.
  */
 typedef struct bmom_table bmom_table;
+
+/*
+ A run through files of structures that hands out the tables batch by batch. One thread uses it at a time.
+ */
+typedef struct bmom_tabulation bmom_tabulation;
 
 #ifdef __cplusplus
 extern "C" {
@@ -660,7 +670,7 @@ int32_t bmom_ionic_character_column(int32_t law,
  */
 int32_t bmom_find_bonds_column(int32_t rule,
                                const struct bmom_settings *settings,
-                               int32_t threads_wanted,
+                               int32_t threads,
                                int64_t n,
                                const int64_t *atom_offsets,
                                int64_t n_atoms,
@@ -789,7 +799,7 @@ int32_t bmom_length_from_dipole_column(int64_t n,
  */
 int32_t bmom_partial_charges_column(int32_t model,
                                     const struct bmom_settings *settings,
-                                    int32_t threads_wanted,
+                                    int32_t threads,
                                     int64_t n,
                                     const int64_t *atom_offsets,
                                     int64_t n_atoms,
@@ -840,7 +850,7 @@ int32_t bmom_partial_charges(int32_t model,
 int32_t bmom_dipole_column(int32_t model,
                            int32_t frame,
                            const struct bmom_settings *settings,
-                           int32_t threads_wanted,
+                           int32_t threads,
                            int64_t n,
                            const int64_t *atom_offsets,
                            int64_t n_atoms,
@@ -910,7 +920,7 @@ int32_t bmom_dipole_of_charges(int64_t n_atoms,
  row_item: the charge at fault.
  */
 int32_t bmom_dipole_of_charges_column(const struct bmom_settings *settings,
-                                      int32_t threads_wanted,
+                                      int32_t threads,
                                       int64_t n,
                                       const int64_t *atom_offsets,
                                       int64_t n_atoms,
@@ -1007,6 +1017,167 @@ void bmom_stop_request(struct bmom_stop *stop);
  Frees a stop handle; NULL is allowed.
  */
 void bmom_stop_free(struct bmom_stop *stop);
+
+/*
+ Reads a file of structures, or all files of a folder, into memory, and tells their bonds.
+ Given: 1 format (BMOM_FORMAT_...); settings (NULL: defaults); threads (1: the caller's, 0: all); stop (NULL: none);
+ 2 path [text; raw bytes on Unix]. Returned: 3 library, NULL after any failure; free it with bmom_library_free.
+ Status: FILE_MISSING, FILE_UNREADABLE, BAD_FORMAT, UNKNOWN_SELECTOR, WRONG_SELECTOR, STOPPED, BAD_HANDLE, BUSY,
+ NULL_POINTER. Notes: a broken record keeps its place; its row says what is wrong.
+ Reference: CTfile Formats, the published specification (V2000 molfiles and SD files); XYZ is common practice.
+ */
+int32_t bmom_library_read(int32_t format,
+                          const struct bmom_settings *settings,
+                          int32_t threads,
+                          const struct bmom_stop *stop,
+                          const char *path,
+                          int64_t path_length,
+                          struct bmom_library **library);
+
+/*
+ Reads structures from a text in memory, as bmom_library_read does from a file; the rows call it "text".
+ Given: 1 format; settings; threads; stop; 2 content [bytes]. Returned: 3 library.
+ Status: as bmom_library_read, without those of files.
+ */
+int32_t bmom_library_parse(int32_t format,
+                           const struct bmom_settings *settings,
+                           int32_t threads,
+                           const struct bmom_stop *stop,
+                           const char *content,
+                           int64_t content_length,
+                           struct bmom_library **library);
+
+/*
+ Takes structures as the caller holds them.
+ Given: 1 molecules: n, atom_offsets (n + 1), n_atoms, atomic_number, formal_charge [e] (NULL: derived), xyz_A [A]
+ (3 an atom); 2 bonds: bond_offsets (n + 1; NULL: found), n_bonds, bond_atoms (2 a bond), bond_order; 3 charge_e,
+ u_charge_e [e] (an atom each; NULL: none; used where the setting charge_model is CHARGES_GIVEN); 4 names: name_offsets
+ (n + 1; NULL: none), name_bytes (UTF-8), n_name_bytes. Returned: 5 library, NULL after any failure.
+ Status: NULL_POINTER, NEGATIVE_COUNT, TOO_LARGE, MISALIGNED, BAD_OFFSETS, NOT_UTF8. What is wrong with one molecule is
+ told in its row of the tables.
+ */
+int32_t bmom_library_from_arrays(int64_t n,
+                                 const int64_t *atom_offsets,
+                                 int64_t n_atoms,
+                                 const int32_t *atomic_number,
+                                 const int32_t *formal_charge,
+                                 const double *xyz_A,
+                                 const int64_t *bond_offsets,
+                                 int64_t n_bonds,
+                                 const int32_t *bond_atoms,
+                                 const double *bond_order,
+                                 const double *charge_e,
+                                 const double *u_charge_e,
+                                 const int64_t *name_offsets,
+                                 const char *name_bytes,
+                                 int64_t n_name_bytes,
+                                 struct bmom_library **library);
+
+/*
+ Number of records, atoms and bonds. A broken record has no atoms; one whose bonds cannot be told has no bonds.
+ Given: 1 library. Returned: 2 molecules; 3 atoms; 4 bonds. Status: BAD_HANDLE, NULL_POINTER.
+ */
+int32_t bmom_library_size(const struct bmom_library *library,
+                          int64_t *molecules,
+                          int64_t *atoms,
+                          int64_t *bonds);
+
+/*
+ Copies the structures out in the layout of a column of molecules; sizes by bmom_library_size; each array may be NULL.
+ Given: 1 library. Returned: 2 atom_offsets (molecules + 1); 3 atomic_number; 4 formal_charge [e] (stated or derived);
+ 5 xyz_A [A] (3 an atom); 6 bond_offsets (molecules + 1); 7 bond_atoms (2 a bond); 8 bond_order; row_status (a record
+ that is broken or whose bonds cannot be told).
+ Status: SOME_ROWS, NO_ROWS, MISALIGNED, OVERLAP, BAD_HANDLE, NULL_POINTER.
+ */
+int32_t bmom_library_arrays(const struct bmom_library *library,
+                            int64_t *atom_offsets,
+                            int32_t *atomic_number,
+                            int32_t *formal_charge,
+                            double *xyz_A,
+                            int64_t *bond_offsets,
+                            int32_t *bond_atoms,
+                            double *bond_order,
+                            int32_t *row_status);
+
+/*
+ The three tables of some records of a library; their columns stand in the catalogue.
+ Given: 1 library; 2 measured (NULL: no measured dipoles are compared in this version); settings (NULL: defaults);
+ threads; stop (NULL: none); 3 first (from 0); 4 n. Returned: 5 polarity; 6 bonds; 7 atoms: NULL where that table is not
+ wanted; NULL is written after any failure. Free each with bmom_table_free.
+ Status: NOT_ALLOWED (measured is not NULL), OUT_OF_RANGE, STOPPED, BAD_HANDLE, BUSY, NULL_POINTER.
+ */
+int32_t bmom_polarity_table(const struct bmom_library *library,
+                            const struct bmom_table *measured,
+                            const struct bmom_settings *settings,
+                            int32_t threads,
+                            const struct bmom_stop *stop,
+                            int64_t first,
+                            int64_t n,
+                            struct bmom_table **polarity,
+                            struct bmom_table **bonds,
+                            struct bmom_table **atoms);
+
+/*
+ Frees a library; NULL is allowed.
+ */
+void bmom_library_free(struct bmom_library *library);
+
+/*
+ Opens a run through a file of structures or all files of a folder, in the order of their names; memory stays bounded
+ whatever their size.
+ Given: 1 measured (NULL: no measured dipoles are compared in this version); 2 format (BMOM_FORMAT_...); settings (NULL:
+ defaults); threads; 3 path [text]; 4 resume_from [text of bmom_tabulation_position, or empty].
+ Returned: 5 tabulation, NULL after any failure; free it with bmom_tabulation_free.
+ Status: NOT_ALLOWED (measured; or resume_from of another run, 4018), FILE_MISSING, FILE_UNREADABLE, BAD_FORMAT,
+ UNKNOWN_SELECTOR, WRONG_SELECTOR, OUT_OF_RANGE (threads or settings), NOT_UTF8, BAD_HANDLE, BUSY, NULL_POINTER.
+ */
+int32_t bmom_tabulation_open(const struct bmom_table *measured,
+                             int32_t format,
+                             const struct bmom_settings *settings,
+                             int32_t threads,
+                             const char *path,
+                             int64_t path_length,
+                             const char *resume_from,
+                             int64_t resume_from_length,
+                             struct bmom_tabulation **tabulation);
+
+/*
+ The tables of the next records of a run.
+ Given: 1 tabulation; stop (NULL: none); 2 max_molecules (from 1). Returned: 3 polarity; 4 bonds; 5 atoms: NULL where that
+ table is not wanted; NULL is written after any failure. Free each with bmom_table_free.
+ Status: END (no record is left), STOPPED (the next call goes on with the same records), FILE_MISSING, FILE_UNREADABLE,
+ BAD_FORMAT (a file has changed), OUT_OF_RANGE, BUSY, OTHER_PROCESS, BAD_HANDLE, NULL_POINTER.
+ */
+int32_t bmom_tabulation_next(struct bmom_tabulation *tabulation,
+                             const struct bmom_stop *stop,
+                             int64_t max_molecules,
+                             struct bmom_table **polarity,
+                             struct bmom_table **bonds,
+                             struct bmom_table **atoms);
+
+/*
+ How far a run has come; any thread may ask at any time, also while another is in bmom_tabulation_next.
+ Given: 1 tabulation. Returned: 2 molecules_done; 3 bytes_done; 4 bytes_total (0: not known); each may be NULL.
+ Status: BAD_HANDLE, NULL_POINTER.
+ */
+int32_t bmom_tabulation_progress(const struct bmom_tabulation *tabulation,
+                                 int64_t *molecules_done,
+                                 int64_t *bytes_done,
+                                 int64_t *bytes_total);
+
+/*
+ Where a run goes on after the last batch, as a text for resume_from of bmom_tabulation_open.
+ Given: 1 tabulation. Returned: 2 text. Status: BUFFER_TOO_SMALL, BUSY, OTHER_PROCESS, BAD_HANDLE, NULL_POINTER.
+ */
+int32_t bmom_tabulation_position(const struct bmom_tabulation *tabulation,
+                                 char *text,
+                                 int64_t capacity,
+                                 int64_t *needed);
+
+/*
+ Ends a run and frees it; NULL is allowed.
+ */
+void bmom_tabulation_free(struct bmom_tabulation *tabulation);
 
 /*
  Number of rows and columns.

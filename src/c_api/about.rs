@@ -100,7 +100,7 @@ pub unsafe extern "C" fn bmom_status_message(
 /// What stands behind a table, scale or law: a JSON object with title, author, year, journal, doi, unit, covers,
 /// uncertainty, mark and remark.
 /// Given: 1 selector. Returned: 2 text (UTF-8).
-/// Status: UNKNOWN_SELECTOR, NO_DATA (the selector is no table), BUFFER_TOO_SMALL, NULL_POINTER, NEGATIVE_COUNT.
+/// Status: UNKNOWN_SELECTOR, WRONG_SELECTOR (no table), BUFFER_TOO_SMALL, NULL_POINTER, NEGATIVE_COUNT.
 #[unsafe(no_mangle)]
 pub unsafe extern "C" fn bmom_source(selector: i32, text: *mut c_char, capacity: i64, needed: *mut i64) -> i32 {
     guard(|| {
@@ -190,15 +190,25 @@ fn code_index(status: i32) -> Option<usize> {
 
 /// A text that is made once and stays for the life of the process.
 fn fixed(cell: &'static OnceBox<CString>, make: impl FnOnce() -> String) -> *const c_char {
-    std::panic::catch_unwind(std::panic::AssertUnwindSafe(|| {
-        cell.get_or_init(|| Box::new(CString::new(make()).unwrap_or_default())).as_ptr()
-    }))
-    .unwrap_or(c"".as_ptr())
+    let mut text = c"".as_ptr();
+    // Numbers are read and written on the way, which the host's rounding must not touch.
+    guard(|| {
+        text = cell.get_or_init(|| Box::new(CString::new(make()).unwrap_or_default())).as_ptr();
+        Ok(Code::Ok)
+    });
+    text
 }
 
 fn listed(cell: &'static OnceBox<Vec<CString>>, index: Option<usize>, make: impl FnOnce() -> Vec<String>) -> *const c_char {
-    let texts = cell.get_or_init(|| {
-        Box::new(make().into_iter().map(|text| CString::new(text).unwrap_or_default()).collect())
+    let mut text = c"UNKNOWN".as_ptr();
+    guard(|| {
+        let texts = cell.get_or_init(|| {
+            Box::new(make().into_iter().map(|text| CString::new(text).unwrap_or_default()).collect())
+        });
+        if let Some(known) = index.and_then(|index| texts.get(index)) {
+            text = known.as_ptr();
+        }
+        Ok(Code::Ok)
     });
-    index.and_then(|index| texts.get(index)).map_or(c"UNKNOWN".as_ptr(), |text| text.as_ptr())
+    text
 }

@@ -386,5 +386,6 @@ pub unsafe extern "C" fn bmom_find_bonds(
             &raw mut status,
         )
     };
-    super::molecules::one_row(code, status)
+    // SAFETY: the caller's promise goes on.
+    unsafe { super::molecules::one_row(code, status, &[], &[(remarks, 0), (item, -1)]) }
 }

@@ -278,5 +278,7 @@ pub unsafe extern "C" fn bmom_partial_charges(
             &raw mut status,
         )
     };
-    one_row(code, status)
+    let numbers = [(charge_e, n_atoms), (u_charge_e, n_atoms)];
+    // SAFETY: the caller's promise goes on.
+    unsafe { one_row(code, status, &numbers, &[(remarks, 0), (item, -1)]) }
 }

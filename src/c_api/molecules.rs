@@ -284,7 +284,33 @@ pub(super) fn set_numbers(out: Option<Out<f64>>, start: usize, values: &[f64]) {
     }
 }
 
-/// The status of a column of one row is that of its row.
-pub(super) fn one_row(code: i32, status: i32) -> i32 {
-    if code == Code::NoRows as i32 || code == Code::SomeRows as i32 { status } else { code }
+/// The end of a plain form, made of the column of one row: its status is that of the row. Where the call itself failed,
+/// nothing was written; then the numbers (pointer and length) become NaN and the integers what stands beside them, so that
+/// no stale result stays behind. Arrays that may not be written to at all are left alone.
+///
+/// # Safety
+/// Each pointer is NULL or leads to as many elements as stands beside it.
+pub(super) unsafe fn one_row(code: i32, status: i32, numbers: &[(*mut f64, i64)], integers: &[(*mut i32, i32)]) -> i32 {
+    if code == Code::NoRows as i32 || code == Code::SomeRows as i32 {
+        return status;
+    }
+    let unfit = [Code::Overlap, Code::Misaligned, Code::TooLarge, Code::BufferTooSmall].map(|code| code as i32);
+    if code == Code::Ok as i32 || unfit.contains(&(code % 1000)) {
+        return code;
+    }
+    for &(pointer, length) in numbers {
+        for i in 0..usize::try_from(length).unwrap_or(0) {
+            if !pointer.is_null() && pointer.is_aligned() {
+                // SAFETY: the caller's promise; not NULL and aligned.
+                unsafe { pointer.add(i).write(super::arrays::NAN) }
+            }
+        }
+    }
+    for &(pointer, blank) in integers {
+        if !pointer.is_null() && pointer.is_aligned() {
+            // SAFETY: as above.
+            unsafe { pointer.write(blank) }
+        }
+    }
+    code
 }

@@ -156,7 +156,9 @@ pub unsafe extern "C" fn bmom_dipole(
             &raw mut status,
         )
     };
-    one_row(code, status)
+    let numbers = [(dipole_D, 3), (covariance_D2, 9), (magnitude_D, 1), (u_magnitude_D, 1), (origin_A, 3)];
+    // SAFETY: the caller's promise goes on.
+    unsafe { one_row(code, status, &numbers, &[(remarks, 0), (item, -1)]) }
 }
 
 /// Dipole vector of point charges about the given origin, from - to +.
@@ -201,7 +203,9 @@ pub unsafe extern "C" fn bmom_dipole_of_charges(
             &raw mut status,
         )
     };
-    one_row(code, status)
+    let numbers = [(dipole_D, 3), (covariance_D2, 9), (magnitude_D, 1), (u_magnitude_D, 1)];
+    // SAFETY: the caller's promise goes on.
+    unsafe { one_row(code, status, &numbers, &[]) }
 }
 
 /// Column form of bmom_dipole_of_charges: settings (NULL; none applies); threads; n; the charges of row r are
@@ -291,7 +295,8 @@ pub unsafe extern "C" fn bmom_dipole_polarity(
     }
     // SAFETY: the caller's promise goes on.
     let code = unsafe { bmom_dipole_polarity_column(limit_D, 1, dipole_D, covariance_D2, polarity, &raw mut status) };
-    one_row(code, status)
+    // SAFETY: the caller's promise goes on.
+    unsafe { one_row(code, status, &[], &[(polarity, i32::MIN)]) }
 }
 
 /// Column form of bmom_dipole_polarity: dipole_D has 3 numbers a row, covariance_D2 9.

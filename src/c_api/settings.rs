@@ -99,7 +99,9 @@ unsafe fn change(
 ) -> i32 {
     guard(|| {
         // SAFETY: the caller's promise about every pointer, stated in the header.
-        let (shared, name) = unsafe { (borrow(settings.cast::<Handle<Shared>>())?, text_in(2, name, name_length)?) };
+        let shared = unsafe { borrow(settings.cast::<Handle<Shared>>()) }.map_err(|failure| failure.argument(1))?;
+        // SAFETY: as above.
+        let name = unsafe { text_in(2, name, name_length)? };
         match shared.state.compare_exchange(OPEN, WRITING, Ordering::AcqRel, Ordering::Acquire) {
             Ok(_) => {}
             Err(FROZEN) => return Err(Failure::of(Code::NotAllowed, 1)),
@@ -108,7 +110,10 @@ unsafe fn change(
         // SAFETY: the state lets one thread in at a time, and none once it is frozen.
         let result = change(unsafe { &mut *shared.settings.get() }, name);
         shared.state.store(OPEN, Ordering::Release);
-        result.map(|()| Code::Ok)
+        result.map(|()| Code::Ok).map_err(|failure| match failure.code {
+            Code::UnknownName | Code::WrongType => failure.argument(2),
+            _ => failure.argument(3),
+        })
     })
 }
 

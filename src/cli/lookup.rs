@@ -19,7 +19,7 @@ use crate::{Layout, Outcome, Trouble, show};
 #[derive(Args)]
 #[command(after_help = "Examples:\n  bondmoment lookup covalent_radius Fe state=low_spin\n  \
     bondmoment lookup bond_polarity C Cl\n  bondmoment lookup charge_from_dipole 1.1086 1.27455 u_dipole_D=0.0003\n  \
-    bondmoment lookup convert 1 from_unit=e_bohr to_unit=debye")]
+    bondmoment lookup convert e_bohr debye 1")]
 pub(crate) struct Lookup {
     /// Name of the function
     function: Option<String>,

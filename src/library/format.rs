@@ -120,7 +120,14 @@ fn is_xyz(lines: &[&str]) -> bool {
 
 /// A counts line somewhere, or the end of a record: the first record is broken, the next ones may not be.
 fn has_ctfile_marks(lines: &[&str]) -> bool {
-    let marked = |line: &&str| line.trim_end() == "$$$$" || line.trim_end() == "M  END" || has_version(line);
+    let counts = |line: &str| {
+        let digits = |counts: &str| counts.bytes().all(|byte| byte == b' ' || byte.is_ascii_digit());
+        (line.ends_with("V2000") || line.ends_with("V3000")) && line.get(..6).is_some_and(digits)
+    };
+    let marked = |line: &&str| {
+        let line = line.trim_end();
+        line == "$$$$" || line == "M  END" || counts(line)
+    };
     lines.iter().any(marked)
 }
 
@@ -154,6 +161,7 @@ mod tests {
             (b" \n\n", "empty"),
             (b"name,value\na,1\n", "no format"),
             (b"2\n\nHe 0 0\n", "no format"),
+            (b"# Notes\n\nAll files are V2000\n$$$$ is the end of a record\n", "no format"),
         ] {
             let problem = told(head).unwrap_err();
             assert_eq!(problem.code, Code::BadFormat);

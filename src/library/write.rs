@@ -28,7 +28,7 @@ pub fn write_csv(table: &Table, output: &mut dyn Write, style: CsvStyle) -> Resu
     let delimiter = if style.decimal_comma { b';' } else { b',' };
     let mut writer = csv::WriterBuilder::new().delimiter(delimiter).from_writer(output);
     if !style.without_names {
-        writer.write_record(table.columns().iter().map(|column| harmless(column.name().into()).into_owned()))?;
+        writer.write_record(table.columns().iter().map(|column| harmless(column.name().into()).into_owned())).map_err(of_output)?;
     }
     for row in 0..table.rows() {
         for column in table.columns() {
@@ -40,11 +40,19 @@ pub fn write_csv(table: &Table, output: &mut dyn Write, style: CsvStyle) -> Resu
             } else {
                 text
             };
-            writer.write_field(text.as_bytes())?;
+            writer.write_field(text.as_bytes()).map_err(of_output)?;
         }
-        writer.write_record(None::<&[u8]>)?;
+        writer.write_record(None::<&[u8]>).map_err(of_output)?;
     }
     writer.flush()
+}
+
+/// The output's own error, so that a closed pipe can be told from a full disk.
+fn of_output(error: csv::Error) -> Error {
+    match error.into_kind() {
+        csv::ErrorKind::Io(error) => error,
+        other => Error::other(format!("{other:?}")),
+    }
 }
 
 /// A text that no spreadsheet takes for a formula: an apostrophe goes before one that begins, after blanks, with `=`,
@@ -72,7 +80,7 @@ pub fn write_json_lines(table: &Table, output: &mut dyn Write) -> Result<()> {
             }
             output.write_all(name.as_bytes())?;
             output.write_all(b":")?;
-            serde_json::to_writer(&mut *output, &json_cell(column, row)).map_err(Error::other)?;
+            serde_json::to_writer(&mut *output, &json_cell(column, row)).map_err(Error::from)?;
         }
         output.write_all(b"}\n")?;
     }

@@ -50,6 +50,7 @@ fn tolerance(a: i32, b: i32) -> Option<f64> {
         (SBlock, _) if b == 6 => 0.15,
         (_, SBlock) if a == 6 => 0.15,
         (SBlock, NonMetal | Halogen) | (NonMetal | Halogen, SBlock) => 0.25,
+        (Halogen, Halogen) => 0.40,
         _ => LARGEST_TOLERANCE,
     })
 }
@@ -161,7 +162,9 @@ fn shared_sides(z: &[i32], near: &mut Vec<Near>) {
                 && !matches!(zm, 5..=7)
                 && pair.ratio >= 1.0
                 && pair.ratio >= longest + CHELATE_MARGIN;
-            if triangle || chelate {
+            // Two halogen atoms on one atom crowd each other; a three-ring with two of them is unknown.
+            let crowded = kind(za) == Kind::Halogen && kind(zb) == Kind::Halogen && pair.ratio > longest;
+            if triangle || chelate || crowded {
                 gone.push(k);
             }
         }

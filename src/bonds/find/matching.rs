@@ -244,6 +244,7 @@ mod tests {
     fn part(n: usize, pairs: &[(usize, usize)]) -> Part {
         Part {
             atoms: vec![[5 * UNIT, 0, 7 * UNIT, FORBIDDEN, FORBIDDEN]; n],
+            charges: vec![[0; MOST_PI + 1]; n],
             bonds: pairs.iter().map(|&(a, b)| PartBond { a, b, cost: [0; 3] }).collect(),
         }
     }

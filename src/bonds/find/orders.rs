@@ -17,6 +17,8 @@ const LENGTH_WEIGHT: f64 = 0.3;
 const LENGTH_SCALE: f64 = 0.10;
 /// … up to this many weights.
 const LENGTH_MOST: f64 = 9.0;
+/// Cost of each net elementary charge of an unsaturated part, in molecules of more than three atoms.
+const PER_CHARGE: i64 = 12 * (UNIT / 10);
 /// Cost of an atom of a ring stated as aromatic that gets no double bond, for carbon.
 const AROMATIC_CARBON: i64 = 10 * UNIT;
 
@@ -204,7 +206,7 @@ pub(super) fn distribute(
     geometry: bool,
 ) {
     let z = molecule.atomic_number;
-    let costs = |atom: usize, bonds: &[Bond]| -> Option<[i64; MOST_PI + 1]> {
+    let costs = |atom: usize, bonds: &[Bond]| -> Option<([i64; MOST_PI + 1], [i32; MOST_PI + 1])> {
         let own = around.of(atom);
         let choices = own.iter().filter(|&&(_, k)| free[k as usize]).count();
         let terminal_halogen = kind(z[atom]) == Kind::Halogen && own.len() == 1;
@@ -213,16 +215,18 @@ pub(super) fn distribute(
         }
         let base: f64 = own.iter().map(|&(_, k)| bonds[k as usize].order).sum();
         let mut costs = [FORBIDDEN; MOST_PI + 1];
-        for (pi, cost) in costs.iter_mut().enumerate().take(2 * choices + 1) {
-            *cost = charge_and_cost(z[atom], &shapes[atom], base as i32 + pi as i32).1;
+        let mut charges = [0; MOST_PI + 1];
+        for (pi, (cost, charge)) in costs.iter_mut().zip(&mut charges).enumerate().take(2 * choices + 1) {
+            (*charge, *cost) = charge_and_cost(z[atom], &shapes[atom], base as i32 + pi as i32);
             if geometry {
                 *cost += angle_cost(z[atom], &shapes[atom], pi);
             } else if pi == 0 && z[atom] == 6 {
                 *cost += AROMATIC_CARBON;
             }
         }
-        costs.iter().skip(1).any(|&cost| cost < FORBIDDEN).then_some(costs)
+        costs.iter().skip(1).any(|&cost| cost < FORBIDDEN).then_some((costs, charges))
     };
+    let per_charge = if z.len() > 3 { PER_CHARGE } else { 0 };
     let mut place = vec![u32::MAX; z.len()];
     let mut stack = Vec::new();
     for first in 0..z.len() {
@@ -230,7 +234,7 @@ pub(super) fn distribute(
             continue;
         }
         let Some(own) = costs(first, bonds) else { continue };
-        let mut part = Part { atoms: vec![own], bonds: Vec::new() };
+        let mut part = Part { atoms: vec![own.0], charges: vec![own.1], bonds: Vec::new() };
         let mut whole = Vec::new();
         place[first] = 0;
         stack.push(first);
@@ -243,7 +247,8 @@ pub(super) fn distribute(
                 if place[there] == u32::MAX {
                     let Some(own) = costs(there, bonds) else { continue };
                     place[there] = part.atoms.len() as u32;
-                    part.atoms.push(own);
+                    part.atoms.push(own.0);
+                    part.charges.push(own.1);
                     stack.push(there);
                 }
                 if atom < there {
@@ -264,7 +269,7 @@ pub(super) fn distribute(
                 PartBond { a: place[bond.a as usize] as usize, b: place[bond.b as usize] as usize, cost }
             })
             .collect();
-        let increments = part.solve().unwrap_or_else(|| matching::increments(&part));
+        let increments = part.settle(per_charge).unwrap_or_else(|| matching::increments(&part));
         for (&k, increment) in whole.iter().zip(increments) {
             bonds[k as usize].order += f64::from(increment);
         }

@@ -1,0 +1,155 @@
+//! Runs through files: the same rows for any batch and any number of threads, stopped and resumed, written and read.
+
+use std::sync::atomic::Ordering;
+
+use bondmoment::library::Tabulation;
+use bondmoment::library::write::{CsvStyle, write_csv, write_json_lines};
+use bondmoment::status::Code;
+
+use super::*;
+
+fn csv_of(tables: &Tables) -> String {
+    let mut bytes = Vec::new();
+    for table in [&tables.polarity, &tables.bonds, &tables.atoms] {
+        write_csv(table, &mut bytes, CsvStyle::default()).unwrap();
+    }
+    String::from_utf8(bytes).unwrap()
+}
+
+fn run(batch: usize, threads: i32) -> String {
+    let settings = Settings::default();
+    let mut all = Tables::new(&settings);
+    let paths = [demo(), file("")];
+    let mut run = Tabulation::open(&paths, FORMAT_BY_CONTENT, settings, None).unwrap();
+    while let Some(tables) = run.next_batch(batch, Wanted::ALL, Threads::new(threads), &never()).unwrap() {
+        assert!(tables.polarity.rows() <= batch);
+        all.append(&tables);
+    }
+    assert_eq!(run.progress().bytes_done(), run.progress().bytes_total());
+    assert_eq!(run.progress().records_done(), all.polarity.rows() as u64);
+    csv_of(&all)
+}
+
+#[test]
+fn same_bytes_for_any_batch_and_any_threads() {
+    let expected = run(1000, 1);
+    assert!(expected.lines().count() > 200);
+    for (batch, threads) in [(1, 1), (2, 3), (7, 2), (16, 7), (17, 1), (1000, 2), (1000, 3), (1000, 7)] {
+        assert_eq!(run(batch, threads), expected, "batch {batch}, threads {threads}");
+    }
+}
+
+/// Enough records that threads are really used.
+#[test]
+fn same_bytes_on_several_threads() {
+    let many = std::fs::read_to_string(demo().join("library.sdf")).unwrap().repeat(40);
+    let library = parse(many.as_bytes());
+    let table = |threads| {
+        let n = library.entries().len();
+        csv_of(&library.polarity_table(0, n, &Settings::default(), Wanted::ALL, Threads::new(threads), &never()).unwrap())
+    };
+    let expected = table(1);
+    for threads in [2, 3, 7] {
+        assert_eq!(table(threads), expected, "threads {threads}");
+    }
+}
+
+#[test]
+fn a_run_goes_on_where_it_ended() {
+    let settings = Settings::default();
+    let paths = [demo(), file("bad_frames.xyz"), file("among_good.sdf")];
+    let whole = {
+        let mut run = Tabulation::open(&paths, FORMAT_BY_CONTENT, settings.clone(), None).unwrap();
+        csv_of(&run.next_batch(1000, Wanted::ALL, Threads::new(1), &never()).unwrap().unwrap())
+    };
+    for batch in [1, 3, 5, 11] {
+        let mut all = Tables::new(&settings);
+        let mut position = String::new();
+        loop {
+            let mut run = Tabulation::open(&paths, FORMAT_BY_CONTENT, settings.clone(), Some(&position)).unwrap();
+            match run.next_batch(batch, Wanted::ALL, Threads::new(1), &never()).unwrap() {
+                Some(tables) => all.append(&tables),
+                None => break,
+            }
+            position = run.position();
+        }
+        assert_eq!(csv_of(&all), whole, "batch {batch}");
+    }
+    for wrong in ["2 0 0 1 0 0 acetonitrile.mol", "1 0 0 1 0 0 other.mol", "1 99 0 1 0 0 x", "nonsense"] {
+        let problem = Tabulation::open(&paths, FORMAT_BY_CONTENT, settings.clone(), Some(wrong)).err().unwrap();
+        assert_eq!(problem.code, Code::NotAllowed, "{wrong}");
+    }
+}
+
+#[test]
+fn a_stopped_batch_is_not_lost() {
+    let settings = Settings::default();
+    let mut run = Tabulation::open(&[demo()], FORMAT_BY_CONTENT, settings, None).unwrap();
+    let stop = never();
+    stop.store(true, Ordering::Relaxed);
+    assert_eq!(run.next_batch(5, Wanted::ALL, Threads::new(1), &stop).unwrap_err().code, Code::Stopped);
+    stop.store(false, Ordering::Relaxed);
+    let tables = run.next_batch(5, Wanted::ALL, Threads::new(1), &stop).unwrap().unwrap();
+    assert_eq!((tables.polarity.rows(), text(&tables.polarity, "record", 0).as_str()), (5, "acetonitrile.mol:1"));
+}
+
+#[test]
+fn a_folder_reports_what_it_leaves_out() {
+    let run = Tabulation::open(&[demo()], FORMAT_BY_CONTENT, Settings::default(), None).unwrap();
+    let left_out: Vec<String> =
+        run.left_out().iter().map(|file| file.path.file_name().unwrap().to_string_lossy().into_owned()).collect();
+    assert_eq!(left_out, ["NOTICE.txt", "README.md"]);
+    let problem = Tabulation::open(&[demo().join("README.md")], FORMAT_BY_CONTENT, Settings::default(), None).err();
+    assert_eq!(problem.unwrap().code, Code::BadFormat);
+}
+
+#[test]
+fn a_stream_is_read_like_a_file() {
+    let bytes = std::fs::read(demo().join("library.sdf")).unwrap();
+    let input = std::io::Cursor::new(bytes);
+    let mut run = Tabulation::from_reader("library.sdf", input, FORMAT_BY_CONTENT, Settings::default()).unwrap();
+    let streamed = run.next_batch(100, Wanted::ALL, Threads::new(1), &never()).unwrap().unwrap();
+    let paths = [demo().join("library.sdf")];
+    let mut run = Tabulation::open(&paths, FORMAT_BY_CONTENT, Settings::default(), None).unwrap();
+    assert_eq!(csv_of(&run.next_batch(100, Wanted::ALL, Threads::new(1), &never()).unwrap().unwrap()), csv_of(&streamed));
+    assert!(run.next_batch(100, Wanted::ALL, Threads::new(1), &never()).unwrap().is_none());
+}
+
+#[test]
+fn tables_that_are_not_wanted_stay_empty() {
+    let library = read("frames.xyz");
+    let wanted = Wanted { polarity: true, bonds: false, atoms: false };
+    let tables = library.polarity_table(1, 2, &Settings::default(), wanted, Threads::new(1), &never()).unwrap();
+    assert_eq!((tables.polarity.rows(), tables.bonds.rows(), tables.atoms.rows()), (2, 0, 0));
+    let beyond = library.polarity_table(3, 9, &Settings::default(), wanted, Threads::new(1), &never());
+    assert_eq!(beyond.unwrap_err().code, Code::OutOfRange);
+}
+
+#[test]
+fn csv_is_harmless_and_json_lines_are_json() {
+    let mut settings = Settings::default();
+    settings.set_text("carry_items", "Note").unwrap();
+    let table = tables(&read("properties.sdf"), &settings).polarity;
+    let mut bytes = Vec::new();
+    write_csv(&table, &mut bytes, CsvStyle { decimal_comma: true, without_names: false }).unwrap();
+    let mut reader = csv::ReaderBuilder::new().delimiter(b';').from_reader(&bytes[..]);
+    let names = reader.headers().unwrap().clone();
+    let column = |name: &str| names.iter().position(|known| known == name).unwrap();
+    let rows: Vec<csv::StringRecord> = reader.records().map(Result::unwrap).collect();
+    assert_eq!(rows.len(), 9);
+    assert_eq!(&rows[6][column("data_Note")], "'=1+1");
+    // HF: 3.98 - 2.20 (handbook column).
+    assert_eq!(&rows[3][column("delta_chi")], "1,78");
+    let charge = &rows[3][column("strongest_bond_charge_e")];
+    assert!(charge.starts_with("-0,"), "numbers stay numbers: {charge}");
+
+    let mut bytes = Vec::new();
+    write_json_lines(&table, &mut bytes).unwrap();
+    let lines: Vec<serde_json::Value> =
+        String::from_utf8(bytes).unwrap().lines().map(|line| serde_json::from_str(line).unwrap()).collect();
+    assert_eq!(lines[6]["data_Note"], "=1+1");
+    assert_eq!(lines[3]["delta_chi"], 1.78);
+    assert!(lines[0]["dipole_D"].is_null());
+    let bits = table.by_name("dipole_D").unwrap().numbers().unwrap()[3].to_bits();
+    assert_eq!(lines[3]["dipole_D"].as_f64().unwrap().to_bits(), bits);
+}
