@@ -18,7 +18,7 @@ mod status;
 const ABI_VERSION: i32 = 1;
 
 /// The entry points, in the order of the header.
-const SOURCES: &[&str] = &["about", "elements", "bonds", "charges", "moments", "settings", "library", "table"];
+const SOURCES: &[&str] = &["about", "elements", "bonds", "charges", "moments", "settings", "library", "tabulation", "table"];
 
 fn main() {
     println!("cargo::rerun-if-changed=build.rs");

@@ -319,7 +319,7 @@ int32_t bmom_status_message(const char *function,
  What stands behind a table, scale or law: a JSON object with title, author, year, journal, doi, unit, covers,
  uncertainty, mark and remark.
  Given: 1 selector. Returned: 2 text (UTF-8).
- Status: UNKNOWN_SELECTOR, NO_DATA (the selector is no table), BUFFER_TOO_SMALL, NULL_POINTER, NEGATIVE_COUNT.
+ Status: UNKNOWN_SELECTOR, WRONG_SELECTOR (no table), BUFFER_TOO_SMALL, NULL_POINTER, NEGATIVE_COUNT.
  */
 int32_t bmom_source(int32_t selector, char *text, int64_t capacity, int64_t *needed);
 

@@ -10,6 +10,10 @@ use rayon::iter::{IntoParallelIterator, ParallelIterator};
 pub struct Threads {
     /// 1: the caller's thread only; 0: all that this process may use.
     pub count: i32,
+    /// Run by the caller before new threads are started.
+    pub before_start: fn(),
+    /// Run by the caller as soon as they are.
+    pub after_start: fn(),
     /// Run at the start of every new thread.
     pub on_start: fn(),
 }
@@ -17,7 +21,7 @@ pub struct Threads {
 impl Threads {
     /// A number of threads without further ado.
     pub fn new(count: i32) -> Self {
-        Self { count, on_start: || {} }
+        Self { count, before_start: || {}, after_start: || {}, on_start: || {} }
     }
 }
 
@@ -36,14 +40,20 @@ pub fn map_rows<T: Send>(n: usize, work: usize, threads: Threads, row: impl Fn(u
     if count > 1 && work >= WORTH_A_POOL {
         let pooled =
             rayon::ThreadPoolBuilder::new().num_threads(count).stack_size(STACK);
-        if let Ok(results) = pooled.build_scoped(
+        (threads.before_start)();
+        let results = pooled.build_scoped(
             |thread| {
                 (threads.on_start)();
                 thread.run();
             },
-            |pool| pool.install(|| (0..n).into_par_iter().map(&row).collect()),
-        ) {
-            return results;
+            |pool| {
+                (threads.after_start)();
+                pool.install(|| (0..n).into_par_iter().map(&row).collect())
+            },
+        );
+        match results {
+            Ok(results) => return results,
+            Err(_) => (threads.after_start)(),
         }
     }
     (0..n).map(row).collect()

@@ -5,6 +5,10 @@
 mod dipoles;
 #[path = "moments/flexibility.rs"]
 mod flexibility;
+#[path = "moments/hostile.rs"]
+mod hostile;
+#[path = "moments/open_set.rs"]
+mod open_set;
 #[path = "moments/point_groups.rs"]
 mod point_groups;
 #[path = "moments/random.rs"]

@@ -20,7 +20,7 @@ pub(super) fn guard(body: impl FnOnce() -> Result<Code, Failure>) -> i32 {
     }
 }
 
-/// Threads of a call: each worker starts with all signals blocked, so that the host's handlers run on the host's own.
+/// Threads of a call: each worker is born with all signals blocked, so that the host's handlers run on the host's own.
 ///
 /// # Errors
 /// `OutOfRange` for a count below 0 or above 1024.
@@ -28,20 +28,41 @@ pub(super) fn pool(count: i32) -> Result<Threads, Failure> {
     if !(0..=1024).contains(&count) {
         return Err(Failure::new(Code::OutOfRange));
     }
-    Ok(Threads { count, on_start: start_worker })
+    Ok(Threads { count, before_start: block_signals, after_start: restore_signals, on_start: start_worker })
 }
 
 fn start_worker() {
     INSIDE.with(|inside| inside.set(true));
+}
+
+/// New threads inherit the mask of the caller, so it blocks all signals while they are started, and no longer: its own
+/// handlers go on during the call. Blocking in the worker itself would leave a moment in which it takes a signal.
+fn block_signals() {
     #[cfg(unix)]
     {
         let mut all = std::mem::MaybeUninit::<libc::sigset_t>::uninit();
-        // SAFETY: sigfillset fills the set before it is used; a null old set is allowed.
+        let mut host = std::mem::MaybeUninit::<libc::sigset_t>::uninit();
+        // SAFETY: sigfillset fills the set before it is used; the old mask is read only where the call filled it.
         unsafe {
             libc::sigfillset(all.as_mut_ptr());
-            libc::pthread_sigmask(libc::SIG_SETMASK, all.as_ptr(), std::ptr::null_mut());
+            if libc::pthread_sigmask(libc::SIG_SETMASK, all.as_ptr(), host.as_mut_ptr()) == 0 {
+                SIGNALS.with(|signals| signals.set(Some(host.assume_init())));
+            }
         }
     }
+}
+
+fn restore_signals() {
+    #[cfg(unix)]
+    if let Some(host) = SIGNALS.with(Cell::take) {
+        // SAFETY: the mask is one that the system gave; a null old mask is allowed.
+        unsafe { libc::pthread_sigmask(libc::SIG_SETMASK, &raw const host, std::ptr::null_mut()) };
+    }
+}
+
+#[cfg(unix)]
+thread_local! {
+    static SIGNALS: Cell<Option<libc::sigset_t>> = const { Cell::new(None) };
 }
 
 thread_local! {

@@ -20,3 +20,4 @@ pub mod library;
 pub mod moments;
 pub mod settings;
 pub mod table;
+pub mod tabulation;

@@ -1,12 +1,14 @@
 //! Entry points for result tables: columns by name, cells with a status each.
 
 use std::ffi::c_char;
+use std::sync::atomic::AtomicBool;
 
-use super::arrays::{Arrays, Out, clean, count};
+use super::arrays::{Arrays, Cell, Out, clean, count};
 use super::guard::guard;
 use super::handles::{Handle, Kind, borrow, free, leak, magic};
 use super::text::{TextOut, text_in};
 use crate::library::table::{Column, Table};
+use crate::library::{Problem, Tables, Wanted};
 use crate::status::{Code, Failure};
 
 /// A table of results: columns with names and types that never change; it may be shared by threads.
@@ -222,4 +224,48 @@ pub unsafe extern "C" fn bmom_table_texts(
 pub unsafe extern "C" fn bmom_table_free(table: *mut bmom_table) {
     // SAFETY: the caller's promise goes on.
     unsafe { free(table.cast::<Handle<Table>>()) }
+}
+
+/// Room for the three tables, each where it is wanted.
+pub(super) struct TablesOut([(bool, Cell<*mut bmom_table>); 3]);
+
+impl TablesOut {
+    pub(super) fn new(arrays: &Arrays, first: i32, pointers: [*mut *mut bmom_table; 3]) -> Result<Self, Failure> {
+        let room = |k: usize| -> Result<_, Failure> {
+            let argument = first + k as i32;
+            Ok((!pointers[k].is_null(), arrays.cell_if(argument, pointers[k], std::ptr::null_mut())?))
+        };
+        let out = [room(0)?, room(1)?, room(2)?];
+        let same = |a: usize, b: usize| !pointers[a].is_null() && pointers[a] == pointers[b];
+        if same(0, 1) || same(0, 2) || same(1, 2) {
+            return Err(Failure::of(Code::Overlap, first));
+        }
+        Ok(Self(out))
+    }
+
+    pub(super) fn wanted(&self) -> Wanted {
+        let [polarity, bonds, atoms] = &self.0;
+        Wanted { polarity: polarity.0, bonds: bonds.0, atoms: atoms.0 }
+    }
+
+    pub(super) fn set(&self, tables: Tables) {
+        for ((wanted, cell), table) in self.0.iter().zip([tables.polarity, tables.bonds, tables.atoms]) {
+            if *wanted {
+                cell.set(table_handle(table));
+            }
+        }
+    }
+}
+
+/// The stop flag of a call without one.
+pub(super) static NEVER: AtomicBool = AtomicBool::new(false);
+
+/// A problem with a file has a code; its words stand in the rows, or are those of the code.
+pub(super) fn failure_of(problem: &Problem) -> Failure {
+    Failure::new(problem.code)
+}
+
+/// Measured dipoles are not compared in this version of the library: the argument keeps its place.
+pub(super) fn none_measured(measured: *const bmom_table, argument: i32) -> Result<(), Failure> {
+    if measured.is_null() { Ok(()) } else { Err(Failure::of(Code::NotAllowed, argument)) }
 }

@@ -77,7 +77,7 @@ pub static PARTIAL_CHARGES: Function = Function {
     notes: &[
         "The charges sum to the net charge; they do not depend on the geometry.",
         "PEOE 1980 has types for H, C, N, O, F, Cl, Br, I and for S with single bonds; any other atom is NO_DATA.",
-        "PEOE 1980 describes the sigma bonds only: C=O, NO2 and CN come out far too little polar, and CO with the wrong sign.",
+        "PEOE 1980 describes the sigma bonds only: cyano groups come out far too little polar, C=O and C-Cl too little, NO2 (from formal charges) too much, and CO with the wrong sign.",
         "The model states no uncertainty.",
         "CHARGES_GIVEN is not allowed here: there is nothing to compute.",
     ],

@@ -75,7 +75,7 @@ impl Tabulate {
             eprintln!("left out: {message}");
         }
         match &self.into {
-            Some(folder) => self.into_folder(&mut run, folder),
+            Some(folder) => self.write_folder(&mut run, folder),
             None => self.to_output(&mut run),
         }
     }
@@ -124,7 +124,7 @@ impl Tabulate {
     }
 
     /// All three tables into a folder; each file appears whole or not at all.
-    fn into_folder(&self, run: &mut Tabulation, folder: &Path) -> Result<Outcome, Trouble> {
+    fn write_folder(&self, run: &mut Tabulation, folder: &Path) -> Result<Outcome, Trouble> {
         let layout = match self.layout {
             None | Some(Layout::Csv) => Layout::Csv,
             Some(Layout::JsonLines) => Layout::JsonLines,

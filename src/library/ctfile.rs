@@ -50,9 +50,7 @@ impl<R: BufRead> CtfileReader<R> {
         };
         Ok(Some(match read {
             Ok(()) => Entry::Molecule(Box::new(record)),
-            Err((line, message)) => {
-                Entry::Broken(Broken { place: record.place, title: record.title, line, message })
-            }
+            Err((line, message)) => Entry::Broken(Broken { place: record.place, title: record.title, line, message }),
         }))
     }
 
@@ -87,12 +85,14 @@ fn read_record(lines: &[Line], first_line: u64, record: &mut Record) -> std::res
         let after = first_line + lines.len() as u64;
         return Err((after, "the record ends before its counts line, the fourth".to_owned()));
     };
-    if !version(counts) {
-        if let Some(at) = lines.iter().take(8).position(version) {
-            let line = lines.get(at).map_or(first_line, |line| line.number);
-            let message = format!("the counts line must be the fourth of the record, here it is number {}", at + 1);
-            return Err((line, message));
-        }
+    let elsewhere = lines.iter().take(8).position(version).filter(|_| !version(counts));
+    if let Some(at) = elsewhere {
+        let line = lines.get(at).map_or(first_line, |line| line.number);
+        let message = format!("the counts line must be the fourth of the record, here it is number {}", at + 1);
+        return Err((line, message));
+    }
+    if let Some(line) = lines.iter().find(|line| line.cut) {
+        return Err((line.number, "the line is longer than 1 MiB".to_owned()));
     }
     let two_dimensional = lines.get(1).is_some_and(|line| dimension(&line.text) == Some("2D"));
     if counts.text.contains("V3000") {
@@ -153,10 +153,8 @@ fn data_items(lines: &[Line]) -> Vec<(String, String)> {
 /// has a name in `<>`.
 fn header(text: &str, blank: bool) -> Option<String> {
     let rest = text.strip_prefix('>')?;
-    if let Some((_, named)) = rest.split_once('<') {
-        if let Some((name, _)) = named.split_once('>') {
-            return Some(name.trim().to_owned());
-        }
+    if let Some((name, _)) = rest.split_once('<').and_then(|(_, named)| named.split_once('>')) {
+        return Some(name.trim().to_owned());
     }
     if !blank {
         return None;

@@ -54,8 +54,6 @@ fn lengths_of_ink(record: &Record) -> bool {
             hydrogens += 1;
         }
     }
-    let off = |sum: f64, count: u32| {
-        count > 0 && !(SHORTEST_RATIO..=LONGEST_RATIO).contains(&(sum / f64::from(count)))
-    };
+    let off = |sum: f64, count: u32| count > 0 && !(SHORTEST_RATIO..=LONGEST_RATIO).contains(&(sum / f64::from(count)));
     off(hydrogen, hydrogens) || off(all, count)
 }

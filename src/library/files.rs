@@ -1,5 +1,6 @@
 //! Which files a run reads, in which order, and what they are called in the tables.
 
+use std::collections::BTreeSet;
 use std::fs::File;
 use std::io::{Read, Seek, SeekFrom};
 use std::path::{Path, PathBuf};
@@ -58,11 +59,12 @@ pub(super) fn sources(paths: &[PathBuf], format: Selector) -> Result<(Vec<Source
         }
     }
     // Two files of one name from different places go by their paths, so that no two records share a key.
-    let names: Vec<String> = sources.iter().map(|source| source.name.clone()).collect();
-    for source in &mut sources {
-        if names.iter().filter(|name| **name == source.name).count() > 1 {
-            source.name = source.path.display().to_string();
-        }
+    let mut names: Vec<String> = sources.iter().map(|source| source.name.clone()).collect();
+    names.sort_unstable();
+    let repeated: BTreeSet<String> =
+        names.windows(2).filter_map(|pair| pair.first().filter(|name| pair.last() == Some(name)).cloned()).collect();
+    for source in sources.iter_mut().filter(|source| repeated.contains(&source.name)) {
+        source.name = source.path.display().to_string();
     }
     Ok((sources, left_out))
 }

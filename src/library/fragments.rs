@@ -8,8 +8,8 @@ use super::kinds::Kind;
 use super::record::Record;
 use super::settings::Settings;
 use crate::charges::{Charges, partial_charges};
-use crate::moments::{PEOE_RMS_D, Verdict, dipole, verdict};
 use crate::molecule::{Bond, Bonding, Molecule};
+use crate::moments::{PEOE_RMS_D, Verdict, dipole, verdict};
 use crate::quantity::Quantity;
 use crate::selectors::{CHARGES_GIVEN, CHARGES_PEOE_1980, POLARITY_UNDECIDED};
 use crate::status::{Code, Failure};
@@ -123,7 +123,8 @@ fn charges_of(
     bonding: &Bonding,
     settings: &Settings,
 ) -> Result<Charges, Failure> {
-    let pick = |all: &Vec<f64>| -> Vec<f64> { atoms.iter().map(|&i| all.get(i).copied().unwrap_or(f64::NAN)).collect() };
+    let pick =
+        |all: &Vec<f64>| -> Vec<f64> { atoms.iter().map(|&i| all.get(i).copied().unwrap_or(f64::NAN)).collect() };
     let given = match &record.charge_e {
         Some((charge, u)) if settings.charge_model == CHARGES_GIVEN => Some((pick(charge), u.as_ref().map(pick))),
         _ => None,

@@ -4,6 +4,8 @@
 //! hydrogens are meant. Where bonds were found from coordinates, the geometry tells: a bent carbon with two neighbours, a
 //! pyramidal one with three, one neighbour at the distance of a single bond. Molecules without hydrogen by nature (CCl4,
 //! C6F6, CO2, C60) lack none. A single missing valence in a record that has hydrogens is a radical, not an omission.
+//!
+//! Some cannot be told: HCN without its hydrogen is CN, CHF3 without it CF3 (taken as lacking), H2O without them O.
 
 use super::record::Record;
 use crate::bonds::is_metal;
@@ -19,7 +21,7 @@ pub(super) fn lacks_hydrogens(record: &Record, bonding: &Bonding, around: &Neigh
     if record.bonds.is_some() {
         by_valence(record, bonding, around, has_hydrogen)
     } else {
-        by_geometry(record, bonding, around, has_hydrogen)
+        by_geometry(record, around, has_hydrogen)
     }
 }
 
@@ -104,7 +106,7 @@ fn valence(record: &Record, bonding: &Bonding, atom: usize) -> Option<f64> {
     })
 }
 
-fn by_geometry(record: &Record, bonding: &Bonding, around: &Neighbours, has_hydrogen: bool) -> bool {
+fn by_geometry(record: &Record, around: &Neighbours, has_hydrogen: bool) -> bool {
     let mut carbons = 0_usize;
     let mut bare = 0_usize;
     for (atom, &z) in record.atomic_number.iter().enumerate() {
@@ -113,22 +115,22 @@ fn by_geometry(record: &Record, bonding: &Bonding, around: &Neighbours, has_hydr
                 carbons += 1;
                 bare += usize::from(bare_carbon(record, around, atom));
             }
-            7 if !has_hydrogen => {
-                // The nitrogen of a stripped amide: one neighbour and the charge that the search had to give it.
-                let charge = bonding.formal_charge.get(atom).copied().unwrap_or(0);
-                let balanced = around
-                    .of(atom)
-                    .iter()
-                    .any(|&(other, _)| bonding.formal_charge.get(other as usize).is_some_and(|&q| q > 0));
-                if around.degree(atom) == 1 && charge < 0 && !balanced {
-                    return true;
-                }
-            }
+            7 if !has_hydrogen && bare_nitrogen(record, around, atom) => return true,
             _ => {}
         }
     }
     // Carbenes and biradicals have one or two bare carbons among others; a stripped molecule has them everywhere.
     if has_hydrogen { bare >= 2 && 2 * bare >= carbons } else { bare >= 1 }
+}
+
+/// A nitrogen atom that ends a molecule at more than the length of a triple bond to carbon (1.16 Å).
+fn bare_nitrogen(record: &Record, around: &Neighbours, atom: usize) -> bool {
+    let [(other, _)] = around.of(atom) else { return false };
+    let other = *other as usize;
+    match (record.atomic_number.get(other), record.xyz.get(atom), record.xyz.get(other)) {
+        (Some(6), Some(a), Some(b)) => norm([a[0] - b[0], a[1] - b[1], a[2] - b[2]]) > 1.22,
+        _ => false,
+    }
 }
 
 /// A carbon atom whose neighbours leave room for hydrogen.
@@ -146,16 +148,16 @@ fn bare_carbon(record: &Record, around: &Neighbours, atom: usize) -> bool {
     }
     let halogens = others.iter().filter(|(_, z, _)| matches!(z, 9 | 17 | 35 | 53)).count();
     match others[..] {
-        // Beyond a double bond to the lighter neighbours: C-C 1.54, C-N 1.47, C-O 1.43 Å against 1.34, 1.29, 1.21.
+        // Longer than in C3 1.28, HNC and CN 1.17, CO 1.13, CS 1.54 Å, where a carbon atom ends a molecule by nature.
         [(_, z, u)] => {
-            let longest_double = match z {
-                6 => 1.42,
-                7 => 1.36,
-                8 => 1.32,
-                15 | 16 => 1.72,
+            let longest = match z {
+                6 => 1.31,
+                7 => 1.22,
+                8 => 1.17,
+                15 | 16 => 1.58,
                 _ => return halogens == 1,
             };
-            norm(u) > longest_double
+            norm(u) > longest
         }
         [(_, _, u), (_, _, v)] => halogens < 2 && cosine(u, v) > -0.87,
         [(a, za, u), (b, zb, v), (c, zc, w)] => {

@@ -23,6 +23,7 @@ pub mod record;
 mod remarks;
 mod rows;
 pub mod settings;
+mod strongest;
 pub mod table;
 pub mod tabulation;
 mod v2000;

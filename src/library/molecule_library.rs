@@ -82,12 +82,7 @@ impl MoleculeLibrary {
     ///
     /// # Errors
     /// `Stopped`.
-    pub fn from_given(
-        source: &str,
-        given: &[Given<'_>],
-        threads: Threads,
-        stop: &AtomicBool,
-    ) -> Result<Self, Problem> {
+    pub fn from_given(source: &str, given: &[Given<'_>], threads: Threads, stop: &AtomicBool) -> Result<Self, Problem> {
         let entry = |(i, given): (usize, &Given<'_>)| {
             let place = Place { file: source.to_owned(), number: i as u64 + 1, line: 0 };
             Entry::Molecule(Box::new(Record {

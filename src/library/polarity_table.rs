@@ -40,7 +40,12 @@ pub static POLARITY_COLUMNS: &[ColumnKind] = &[
     column("cov_xz_D2", TYPE_NUMBER, "D²", "Covariance of the dipole vector, xz [D²]"),
     column("cov_yz_D2", TYPE_NUMBER, "D²", "Covariance of the dipole vector, yz [D²]"),
     column("polarity", TYPE_TEXT, "", "polar, non-polar, undecided or charged"),
-    column("strongest_bond", TYPE_TEXT, "", "Bond of greatest difference of electronegativity; - = ≡ order, ≈ aromatic, ~ none"),
+    column(
+        "strongest_bond",
+        TYPE_TEXT,
+        "",
+        "Bond of greatest difference of electronegativity; - = ≡ order, ≈ aromatic, ~ none",
+    ),
     column("delta_chi", TYPE_NUMBER, "", "Its difference of electronegativity, not negative"),
     column("negative_end", TYPE_TEXT, "", "Its more electronegative atom"),
     column("strongest_bond_charge_e", TYPE_NUMBER, "e", "Partial charge of that atom by the charge model [e]"),

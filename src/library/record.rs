@@ -32,6 +32,9 @@ pub struct StatedStereo {
     pub chiral: bool,
 }
 
+/// Partial charges [e] and, if known, their standard uncertainties [e] (NaN: not known).
+pub type GivenCharges = (Vec<f64>, Option<Vec<f64>>);
+
 /// A structure as a file states it. All atom lists have one entry an atom, 0-based, in the order of the file.
 #[derive(Clone, Debug, Default)]
 pub struct Record {
@@ -47,8 +50,8 @@ pub struct Record {
     pub formal_charge: Option<Vec<i32>>,
     /// Bonds with 1.5 for aromatic ones; `None` where the file states none.
     pub bonds: Option<Vec<Bond>>,
-    /// Partial charges [e] and their standard uncertainties (NaN: not known), where the caller gives them.
-    pub charge_e: Option<(Vec<f64>, Option<Vec<f64>>)>,
+    /// Partial charges, where the caller gives them.
+    pub charge_e: Option<GivenCharges>,
     /// Data items as (name, value) in the order of the file; a value may have several lines.
     pub data: Vec<(String, String)>,
     /// The file calls the record two-dimensional, and all atoms lie in one plane z = constant.
@@ -68,11 +71,7 @@ pub struct Record {
 impl Record {
     /// The atoms as the families see them.
     pub fn molecule(&self) -> Molecule<'_> {
-        Molecule {
-            atomic_number: &self.atomic_number,
-            formal_charge: self.formal_charge.as_deref(),
-            xyz: &self.xyz,
-        }
+        Molecule { atomic_number: &self.atomic_number, formal_charge: self.formal_charge.as_deref(), xyz: &self.xyz }
     }
 
     /// The value of a data item; of several with one name the first.

@@ -4,10 +4,10 @@ use super::formula::atom_label;
 use super::fragments::{Computed, MOST_TOLD};
 use super::kinds::Kind;
 use super::record::Record;
-use super::rows::StrongestBond;
 use super::settings::Settings;
-use crate::moments::PEOE_RMS_D;
+use super::strongest::StrongestBond;
 use crate::molecule::Bonding;
+use crate::moments::PEOE_RMS_D;
 use crate::status::{Code, Failure, remark};
 
 /// Charges closer than this are taken as equal [e].
@@ -63,10 +63,8 @@ pub(super) fn detail(
     if kind.fragments > MOST_TOLD && !computed.told.is_empty() {
         words.push(format!("{} more fragments", kind.fragments - MOST_TOLD));
     }
-    if let Ok(verdict) = &computed.verdict {
-        if verdict.by_rms && !verdict.dipole.charged {
-            words.push(format!("the model has no uncertainty of its own; judged with its rms of {PEOE_RMS_D:.2} D"));
-        }
+    if computed.verdict.as_ref().is_ok_and(|verdict| verdict.by_rms && !verdict.dipole.charged) {
+        words.push(format!("the model has no uncertainty of its own; judged with its rms of {PEOE_RMS_D:.2} D"));
     }
     if computed.not_judged {
         words.push("the charges given have no uncertainty, so the polarity is not decided".to_owned());

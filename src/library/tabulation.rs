@@ -2,7 +2,7 @@
 //! out in the order of the files.
 
 use std::fs::File;
-use std::io::{BufRead, BufReader};
+use std::io::{BufRead, BufReader, Cursor, Read};
 use std::path::PathBuf;
 use std::sync::Arc;
 use std::sync::atomic::{AtomicBool, AtomicU64, Ordering};
@@ -11,15 +11,16 @@ pub use super::files::LeftOut;
 use super::files::{Source, open_at, sources};
 use super::format::HEAD;
 use super::polarity_table::{Tables, Task, Wanted, stopped, tables_of};
-use super::reader::{Reader, Spot};
+use super::reader::{Reader, Spot, unreadable};
 use super::record::{Entry, Problem};
 use super::settings::Settings;
 use crate::parallel::Threads;
 use crate::selectors::Selector;
 use crate::status::Code;
 
-/// A batch ends early when it holds this many atoms, so that memory stays bounded whatever the records.
-const MOST_ATOMS_A_BATCH: usize = 2_000_000;
+/// A batch ends early when it holds this much, so that memory stays bounded whatever the records: an atom counts 1, and
+/// so do 64 bytes of a file.
+const MOST_A_BATCH: u64 = 4_000_000;
 
 /// How far a run has come. It may be read by any thread at any time.
 #[derive(Debug, Default)]
@@ -124,12 +125,15 @@ impl Tabulation {
     /// As [`Tabulation::open`].
     pub fn from_reader(
         name: &str,
-        input: impl std::io::Read + Send + 'static,
+        mut input: impl Read + Send + 'static,
         format: Selector,
         settings: Settings,
     ) -> Result<Self, Problem> {
         settings.check().map_err(|failure| Problem::new(failure.code, "ionic_from must not be below polar_from"))?;
-        let stream: Stream = Box::new(BufReader::with_capacity(HEAD, input));
+        // A pipe may hand out a few bytes at a time; the format is told from all that it will take.
+        let mut head = Vec::new();
+        input.by_ref().take(HEAD as u64).read_to_end(&mut head).map_err(|error| unreadable(name, &error))?;
+        let stream: Stream = Box::new(BufReader::with_capacity(HEAD, Cursor::new(head).chain(input)));
         let reader = Reader::open(stream, name, format)?;
         Ok(Self {
             sources: Vec::new(),
@@ -206,8 +210,8 @@ impl Tabulation {
 
     /// Reads records until the batch is full.
     fn fill(&mut self, max_records: usize, stop: &AtomicBool) -> Result<(), Problem> {
-        let mut atoms: usize = self.pending.iter().map(Entry::atoms).sum();
-        while self.pending.len() < max_records && atoms < MOST_ATOMS_A_BATCH {
+        let mut held: u64 = self.pending.iter().map(|entry| entry.atoms() as u64 + 1).sum();
+        while self.pending.len() < max_records && held < MOST_A_BATCH {
             if stop.load(Ordering::Relaxed) {
                 return Err(stopped());
             }
@@ -218,9 +222,10 @@ impl Tabulation {
                 self.reader = Some(self.open_file(Spot::START)?);
             }
             let Some(reader) = &mut self.reader else { break };
+            let from = reader.spot().byte;
             match reader.next(&self.name)? {
                 Some(entry) => {
-                    atoms += entry.atoms();
+                    held += entry.atoms() as u64 + 1 + reader.spot().byte.saturating_sub(from) / 64;
                     self.read += 1;
                     self.pending.push(entry);
                 }

@@ -58,7 +58,10 @@ fn counts(line: Option<&Line>) -> Result<(usize, usize, bool), Fault> {
     match by_columns().or_else(by_blanks) {
         Some((atoms, bonds)) => match (size(atoms), size(bonds)) {
             (Some(atoms), Some(bonds)) => Ok((atoms, bonds, field(text, 12, 15) == Some(1))),
-            _ => Err((line.number, format!("the counts are {atoms} atoms and {bonds} bonds; expected 0 to 999"))),
+            _ => Err((
+                line.number,
+                format!("the counts are {atoms} atoms and {bonds} bonds; expected 0 to 999 (free format: 1000000)"),
+            )),
         },
         None => Err((line.number, expected("a counts line (number of atoms, number of bonds)", Some(line)))),
     }
@@ -133,7 +136,8 @@ fn atom(line: &Line, number: usize, atoms: usize, record: &mut Record) -> Result
 fn bond(line: &Line, number: usize, bonds: usize, atoms: usize, record: &mut Record) -> Result<Bond, Fault> {
     let text = &line.text;
     let fail = |what: String| (line.number, format!("bond {number} of {bonds}: {what}"));
-    let by_columns = || Some([field(text, 0, 3)?, field(text, 3, 6)?, field(text, 6, 9)?, field(text, 9, 12).unwrap_or(0)]);
+    let by_columns =
+        || Some([field(text, 0, 3)?, field(text, 3, 6)?, field(text, 6, 9)?, field(text, 9, 12).unwrap_or(0)]);
     let by_blanks = || {
         let mut words = text.split_whitespace();
         let three = [integer(words.next()?)?, integer(words.next()?)?, integer(words.next()?)?];
@@ -144,7 +148,8 @@ fn bond(line: &Line, number: usize, bonds: usize, atoms: usize, record: &mut Rec
     let Some([a, b, kind, stereo]) = fields else {
         return Err(fail(expected("two atoms and a bond type", Some(line))));
     };
-    let index = |n: i64| usize::try_from(n).ok().filter(|n| (1..=atoms).contains(n)).and_then(|n| u32::try_from(n - 1).ok());
+    let index =
+        |n: i64| usize::try_from(n).ok().filter(|n| (1..=atoms).contains(n)).and_then(|n| u32::try_from(n - 1).ok());
     let (Some(a0), Some(b0)) = (index(a), index(b)) else {
         return Err(fail(format!("it joins atoms {a} and {b}; expected 1 to {atoms}")));
     };
@@ -171,14 +176,13 @@ fn repeated(bonds: &[Bond], lines: &[Line], first: usize) -> Result<(), Fault> {
     let mut pairs: Vec<(u32, u32, usize)> =
         bonds.iter().enumerate().map(|(i, bond)| (bond.a.min(bond.b), bond.a.max(bond.b), i)).collect();
     pairs.sort_unstable();
-    for pair in pairs.windows(2) {
-        if let [one, two] = pair {
-            if (one.0, one.1) == (two.0, two.1) {
-                let line = lines.get(first + two.2).map_or(0, |line| line.number);
-                let message = format!("atoms {} and {} are bonded twice", one.0 + 1, one.1 + 1);
-                return Err((line, message));
-            }
-        }
+    let twice = pairs.windows(2).find_map(|pair| match pair {
+        [one, two] if (one.0, one.1) == (two.0, two.1) => Some(*two),
+        _ => None,
+    });
+    if let Some((a, b, bond)) = twice {
+        let line = lines.get(first + bond).map_or(0, |line| line.number);
+        return Err((line, format!("atoms {} and {} are bonded twice", a + 1, b + 1)));
     }
     Ok(())
 }
@@ -253,7 +257,8 @@ fn pairs(line: &Line, kind: &str, atoms: usize) -> Result<Vec<(u32, i32)>, Fault
     let mut pairs = Vec::new();
     for pair in rest.chunks_exact(2) {
         let [atom, value] = pair else { continue };
-        let index = usize::try_from(*atom).ok().filter(|n| (1..=atoms).contains(n)).and_then(|n| u32::try_from(n - 1).ok());
+        let index =
+            usize::try_from(*atom).ok().filter(|n| (1..=atoms).contains(n)).and_then(|n| u32::try_from(n - 1).ok());
         match (index, i32::try_from(*value)) {
             (Some(index), Ok(value)) => pairs.push((index, value)),
             (None, _) => return Err(fail(format!("there is no atom {atom}; expected 1 to {atoms}"))),

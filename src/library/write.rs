@@ -28,7 +28,9 @@ pub fn write_csv(table: &Table, output: &mut dyn Write, style: CsvStyle) -> Resu
     let delimiter = if style.decimal_comma { b';' } else { b',' };
     let mut writer = csv::WriterBuilder::new().delimiter(delimiter).from_writer(output);
     if !style.without_names {
-        writer.write_record(table.columns().iter().map(|column| harmless(column.name().into()).into_owned())).map_err(of_output)?;
+        writer
+            .write_record(table.columns().iter().map(|column| harmless(column.name().into()).into_owned()))
+            .map_err(of_output)?;
     }
     for row in 0..table.rows() {
         for column in table.columns() {
@@ -60,7 +62,9 @@ fn of_output(error: csv::Error) -> Error {
 fn harmless(text: Cow<'_, str>) -> Cow<'_, str> {
     let first = text.trim_start_matches(' ').chars().next();
     match first {
-        Some('=' | '+' | '-' | '@' | '＝' | '＋' | '－' | '＠' | '\t' | '\r' | '\n') => Cow::Owned(format!("'{text}")),
+        Some('=' | '+' | '-' | '@' | '＝' | '＋' | '－' | '＠' | '\t' | '\r' | '\n') => {
+            Cow::Owned(format!("'{text}"))
+        }
         _ => text,
     }
 }
@@ -70,8 +74,12 @@ fn harmless(text: Cow<'_, str>) -> Cow<'_, str> {
 /// # Errors
 /// Those of the output.
 pub fn write_json_lines(table: &Table, output: &mut dyn Write) -> Result<()> {
-    let names: Vec<String> =
-        table.columns().iter().map(|column| serde_json::to_string(column.name())).collect::<std::result::Result<_, _>>().map_err(Error::other)?;
+    let names: Vec<String> = table
+        .columns()
+        .iter()
+        .map(|column| serde_json::to_string(column.name()))
+        .collect::<std::result::Result<_, _>>()
+        .map_err(Error::other)?;
     for row in 0..table.rows() {
         output.write_all(b"{")?;
         for (i, (column, name)) in table.columns().iter().zip(&names).enumerate() {

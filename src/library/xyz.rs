@@ -88,11 +88,10 @@ impl<R: BufRead> XyzReader<R> {
             }
         }
         // One atom line more: the count is wrong, and nobody can say which atoms are meant.
-        if let Some(line) = self.lines.peek(0)? {
-            if count_of(&line.text).is_none() && atom_line(&line.text).is_ok() {
-                let message = format!("more atom lines follow than the {count} stated in line {}", count_line.number);
-                return Ok(Err((line.number, message)));
-            }
+        let more = |line: &&Line| count_of(&line.text).is_none() && atom_line(&line.text).is_ok();
+        if let Some(line) = self.lines.peek(0)?.filter(more) {
+            let message = format!("more atom lines follow than the {count} stated in line {}", count_line.number);
+            return Ok(Err((line.number, message)));
         }
         Ok(Ok(()))
     }

@@ -25,7 +25,7 @@ fn xyz_frames_of_every_manner() {
     assert_eq!(records[3].title, "a single atom");
     assert_eq!((records[4].title.as_str(), records[4].data.len()), ("", 0));
     assert_eq!(records[4].xyz[1], [0.0, 0.0, 1.0977]);
-    assert_eq!(records[4].place.line, 18);
+    assert_eq!(records[4].place.line, 20);
     assert!(records.iter().all(|record| record.formal_charge.is_none() && record.bonds.is_none()));
 }
 

@@ -63,6 +63,21 @@ fn extremes() {
     survive(b"2\n\nC 0 0 0\nC 0 0 0\n");
     survive("1\n\nHe 0 0 0\n".repeat(500).as_bytes());
     survive(b"x\nx\nx\n  1  0  0 V2000\n    0.0000    0.0000    0.0000 C   0  9\nM  END\n");
-    survive(b"x\nx\nx\n  1  0  0 V2000\n    0.0000    0.0000    0.0000 C   0  0\nS  SKP99999999999\nM  CHG  9\nM  END\n");
+    survive(
+        b"x\nx\nx\n  1  0  0 V2000\n    0.0000    0.0000    0.0000 C   0  0\nS  SKP99999999999\nM  CHG  9\nM  END\n",
+    );
     survive("x\nx\nx\n  1  0  0 V2000\n    0.0000    0.0000    0.0000 \u{e9}   0  0\nM  END\n".as_bytes());
+}
+
+/// Callers may have small stacks.
+#[test]
+fn a_stack_of_64_kib_is_enough() {
+    let bytes = std::fs::read(demo().join("library.sdf")).unwrap();
+    let work = move || {
+        survive(&bytes);
+        for sample in samples() {
+            survive(&sample);
+        }
+    };
+    std::thread::Builder::new().stack_size(64 << 10).spawn(work).unwrap().join().unwrap();
 }

@@ -53,7 +53,10 @@ fn the_demo_tells_kinds_apart() {
 fn the_detail_says_what_a_careful_reader_should_know() {
     let table = demo_tables().polarity;
     for (record, words) in [
-        ("broken/among_good.sdf:4", "broken/among_good.sdf, record 4, line 116: atom 2 of 5: there is no element \"Zz\""),
+        (
+            "broken/among_good.sdf:4",
+            "broken/among_good.sdf, record 4, line 116: atom 2 of 5: there is no element \"Zz\"",
+        ),
         ("library.sdf:4", "by symmetry"),
         ("library.sdf:12", "one conformer of a flexible molecule"),
         ("ions_and_pairs.xyz:1", "net charge derived, not stated"),
@@ -108,7 +111,10 @@ fn the_table_of_bonds() {
     assert_eq!(tetra.len(), 4);
     assert!((number(&table, "expected_A", tetra[0]) - 1.78).abs() < 1e-9);
     let salt = rows("ions_and_pairs.xyz:4");
-    assert_eq!((text(&table, "class", salt[0]).as_str(), text(&table, "negative_end", salt[0]).as_str()), ("ionic", "Cl2"));
+    assert_eq!(
+        (text(&table, "class", salt[0]).as_str(), text(&table, "negative_end", salt[0]).as_str()),
+        ("ionic", "Cl2")
+    );
     // Aromatic bonds are shown as such; C(sp2)-Cl 0.73 + 1.02.
     let chlorobenzene = rows("library.sdf:5");
     let orders: Vec<f64> = chlorobenzene.iter().map(|&row| number(&table, "order", row)).collect();
@@ -153,8 +159,17 @@ fn planar_molecules_are_no_drawings_and_drawings_are_no_molecules() {
     assert_eq!(kind(&sd("drawing by its code", "2D", &water, &bonds)), "flat drawing");
     let drawn = [(0.0, 0.0, 0.0, "O"), (1.5, 0.0, 0.0, "H"), (-0.75, 1.3, 0.0, "H")];
     assert_eq!(kind(&sd("drawn lengths", "3D", &drawn, &bonds)), "flat drawing");
-    let cross = [(0.0, 0.0, 0.0, "C"), (1.09, 0.0, 0.0, "H"), (-1.09, 0.0, 0.0, "H"), (0.0, 1.09, 0.0, "H"), (0.0, -1.09, 0.0, "H")];
-    assert_eq!(kind(&sd("methane as a cross", "3D", &cross, &[(1, 2, 1), (1, 3, 1), (1, 4, 1), (1, 5, 1)])), "flat drawing");
+    let cross = [
+        (0.0, 0.0, 0.0, "C"),
+        (1.09, 0.0, 0.0, "H"),
+        (-1.09, 0.0, 0.0, "H"),
+        (0.0, 1.09, 0.0, "H"),
+        (0.0, -1.09, 0.0, "H"),
+    ];
+    assert_eq!(
+        kind(&sd("methane as a cross", "3D", &cross, &[(1, 2, 1), (1, 3, 1), (1, 4, 1), (1, 5, 1)])),
+        "flat drawing"
+    );
     let nowhere = [(0.0, 0.0, 0.0, "O"), (0.0, 0.0, 0.0, "H"), (0.0, 0.0, 0.0, "H")];
     let table = tables_of(&sd("nowhere", "3D", &nowhere, &bonds)).polarity;
     assert_eq!(text(&table, "detail", 0), "the record has no coordinates");
@@ -167,16 +182,21 @@ fn planar_molecules_are_no_drawings_and_drawings_are_no_molecules() {
 #[test]
 fn molecules_without_hydrogen_by_nature_lack_none() {
     let kind = |frame: &str| text(&tables_of(frame).polarity, "structure_kind", 0);
-    assert_eq!(kind("5\nCCl4\nC 0 0 0\nCl 1.02 1.02 1.02\nCl 1.02 -1.02 -1.02\nCl -1.02 1.02 -1.02\nCl -1.02 -1.02 1.02\n"), "molecule");
+    assert_eq!(
+        kind("5\nCCl4\nC 0 0 0\nCl 1.02 1.02 1.02\nCl 1.02 -1.02 -1.02\nCl -1.02 1.02 -1.02\nCl -1.02 -1.02 1.02\n"),
+        "molecule"
+    );
     assert_eq!(kind("3\nCO2\nC 0 0 0\nO 0 0 1.16\nO 0 0 -1.16\n"), "molecule");
     assert_eq!(kind("2\nCO\nC 0 0 0\nO 0 0 1.128\n"), "molecule");
     assert_eq!(kind("4\nphosgene\nC 0 0 0\nO 0 0 1.18\nCl 1.45 0 -0.96\nCl -1.45 0 -0.96\n"), "molecule");
     assert_eq!(kind("4\ncyanogen\nN 0 0 0\nC 0 0 1.16\nC 0 0 2.54\nN 0 0 3.70\n"), "molecule");
-    assert_eq!(kind("2\nNO\nN 0 0 0\nO 0 0 1.15\n"), "open shell");
+    assert_eq!(kind("2\nhydroxyl\nO 0 0 0\nH 0 0 0.97\n"), "open shell");
     assert_eq!(kind("1\nneon\nNe 0 0 0\n"), "atom");
     // Ethanol, ethane and benzene without their hydrogens.
     assert_eq!(kind("3\nethanol\nC 0 0 0\nC 1.52 0 0\nO 2.03 1.33 0\n"), "hydrogens missing");
     assert_eq!(kind("2\nethane\nC 0 0 0\nC 1.54 0 0\n"), "hydrogens missing");
+    assert_eq!(kind("2\nformaldehyde\nC 0 0 0\nO 0 0 1.21\n"), "hydrogens missing");
+    assert_eq!(kind("4\nurea\nC 0 0 0\nO 0 0 1.22\nN 1.15 0 -0.67\nN -1.15 0 -0.67\n"), "hydrogens missing");
     let ring = "6\nbenzene\nC 1.39 0 0\nC 0.695 1.2038 0\nC -0.695 1.2038 0\nC -1.39 0 0\nC -0.695 -1.2038 0\nC 0.695 -1.2038 0\n";
     assert_eq!(kind(ring), "hydrogens missing");
 }
@@ -209,12 +229,24 @@ fn names_carried_items_and_given_charges() {
     let table = tables(&library, &settings).polarity;
     assert!((number(&table, "dipole_z_D", 0) - 2.401_602_356).abs() < 1e-8);
     assert_eq!((text(&table, "record", 0).as_str(), text(&table, "polarity", 0).as_str()), ("arrays:1", "polar"));
+    // The charges call hydrogen the negative end, Δχ fluorine.
+    let reversed = Given { charge_e: Some(&[0.5, -0.5]), ..given };
+    let reversed = MoleculeLibrary::from_given("arrays", &[reversed], Threads::new(1), &never()).unwrap();
+    let detail = text(&tables(&reversed, &settings).polarity, "detail", 0);
+    assert!(detail.contains("the charge model names another negative end"), "{detail}");
+    assert!(!text(&table, "detail", 0).contains("another negative end"));
     // Without uncertainties nothing is decided; without charges there are none.
-    let unsure = MoleculeLibrary::from_given("arrays", &[Given { u_charge_e: None, ..given }], Threads::new(1), &never());
+    let unsure =
+        MoleculeLibrary::from_given("arrays", &[Given { u_charge_e: None, ..given }], Threads::new(1), &never());
     let table = tables(&unsure.unwrap(), &settings).polarity;
     assert_eq!(text(&table, "polarity", 0), "undecided");
     assert!(text(&table, "detail", 0).contains("the charges given have no uncertainty"));
-    let none = MoleculeLibrary::from_given("arrays", &[Given { charge_e: None, u_charge_e: None, ..given }], Threads::new(1), &never());
+    let none = MoleculeLibrary::from_given(
+        "arrays",
+        &[Given { charge_e: None, u_charge_e: None, ..given }],
+        Threads::new(1),
+        &never(),
+    );
     assert_eq!(text(&tables(&none.unwrap(), &settings).polarity, "status", 0), "NO_DATA");
     settings.set_choice("charge_model", CHARGES_PEOE_1980).unwrap();
     assert_eq!(text(&tables(&library, &settings).polarity, "charge_model", 0), "CHARGES_PEOE_1980");

@@ -46,7 +46,9 @@ fn same_bytes_on_several_threads() {
     let library = parse(many.as_bytes());
     let table = |threads| {
         let n = library.entries().len();
-        csv_of(&library.polarity_table(0, n, &Settings::default(), Wanted::ALL, Threads::new(threads), &never()).unwrap())
+        csv_of(
+            &library.polarity_table(0, n, &Settings::default(), Wanted::ALL, Threads::new(threads), &never()).unwrap(),
+        )
     };
     let expected = table(1);
     for threads in [2, 3, 7] {
@@ -103,15 +105,34 @@ fn a_folder_reports_what_it_leaves_out() {
     assert_eq!(problem.unwrap().code, Code::BadFormat);
 }
 
+/// A stream that hands out one byte at a time, as a slow pipe may.
+struct Drops(Vec<u8>, usize);
+
+impl std::io::Read for Drops {
+    fn read(&mut self, buffer: &mut [u8]) -> std::io::Result<usize> {
+        match (buffer.first_mut(), self.0.get(self.1)) {
+            (Some(slot), Some(&byte)) => {
+                *slot = byte;
+                self.1 += 1;
+                Ok(1)
+            }
+            _ => Ok(0),
+        }
+    }
+}
+
 #[test]
 fn a_stream_is_read_like_a_file() {
     let bytes = std::fs::read(demo().join("library.sdf")).unwrap();
-    let input = std::io::Cursor::new(bytes);
-    let mut run = Tabulation::from_reader("library.sdf", input, FORMAT_BY_CONTENT, Settings::default()).unwrap();
+    let mut run =
+        Tabulation::from_reader("library.sdf", Drops(bytes, 0), FORMAT_BY_CONTENT, Settings::default()).unwrap();
     let streamed = run.next_batch(100, Wanted::ALL, Threads::new(1), &never()).unwrap().unwrap();
     let paths = [demo().join("library.sdf")];
     let mut run = Tabulation::open(&paths, FORMAT_BY_CONTENT, Settings::default(), None).unwrap();
-    assert_eq!(csv_of(&run.next_batch(100, Wanted::ALL, Threads::new(1), &never()).unwrap().unwrap()), csv_of(&streamed));
+    assert_eq!(
+        csv_of(&run.next_batch(100, Wanted::ALL, Threads::new(1), &never()).unwrap().unwrap()),
+        csv_of(&streamed)
+    );
     assert!(run.next_batch(100, Wanted::ALL, Threads::new(1), &never()).unwrap().is_none());
 }
 

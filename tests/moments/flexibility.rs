@@ -36,7 +36,8 @@ fn turn(found: &Structure, xyz: &mut [[f64; 3]], i: u32, j: u32, angle: f64) {
         let atom = moving[head];
         head += 1;
         for &(other, _) in around.of(atom as usize) {
-            if !(atom == j && other == i) && !moving.contains(&other) {
+            let back = atom == j && other == i;
+            if !back && !moving.contains(&other) {
                 moving.push(other);
             }
         }
@@ -197,6 +198,24 @@ proptest! {
                 prop_assert!(magnitude(&charges.charge, &xyz) <= result.bound_D * (1.0 + 1e-12), "{name}");
             }
         }
+    }
+
+    /// Nitrogen inversion: the amino group reflected in a plane through the C-N axis, and turned.
+    #[test]
+    fn nitrogen_inversion_never_passes_the_bound(seed in 1_u64..u64::MAX) {
+        let mut random = Random(seed);
+        let found = structure("methylamine");
+        let charges = Charges { charge: random_charges(&mut random, 7), u: None };
+        let result = greatest_dipole(found.molecule(), &found.bonding, &charges).unwrap();
+        prop_assert_eq!(result.hinges, 1);
+        let mut xyz = found.xyz.clone();
+        // The axis is x through the carbon at the origin, so that the plane y = 0 holds it.
+        prop_assert!(length(xyz[0]) == 0.0 && xyz[1][1] == 0.0 && xyz[1][2] == 0.0);
+        for hydrogen in [5, 6] {
+            xyz[hydrogen][1] *= -1.0;
+        }
+        turn(&found, &mut xyz, 0, 1, 7.0 * random.unit());
+        prop_assert!(magnitude(&charges.charge, &xyz) <= result.bound_D * (1.0 + 1e-12));
     }
 
     /// The other chair of cyclohexane: the mirror image with the two hydrogens of every carbon exchanged, which keeps all

@@ -17,8 +17,10 @@ const LENGTH_WEIGHT: f64 = 0.3;
 const LENGTH_SCALE: f64 = 0.10;
 /// … up to this many weights.
 const LENGTH_MOST: f64 = 9.0;
+/// Below this length [Å] nitrogen monoxide is the cation (1.06 Å), above it the radical (1.15 Å).
+const SHORT_NITROSYL: f64 = 1.10;
 /// Cost of each net elementary charge of an unsaturated part, in molecules of more than three atoms.
-const PER_CHARGE: i64 = 12 * (UNIT / 10);
+const PER_CHARGE: i64 = 2 * UNIT;
 /// Cost of an atom of a ring stated as aromatic that gets no double bond, for carbon.
 const AROMATIC_CARBON: i64 = 10 * UNIT;
 
@@ -138,6 +140,15 @@ pub(super) fn shapes(
             shape
         })
         .collect();
+    for (atom, &element) in z.iter().enumerate().filter(|&(_, &element)| group(element) == 16) {
+        let [(other, _)] = *around.of(atom) else { continue };
+        let partner = shapes[other as usize];
+        shapes[atom].triple = match z[other as usize] {
+            6 => partner.partners == 1 || (partner.partners == 2 && partner.linear) || rings.is_none(),
+            7 => partner.partners == 1 && distance(molecule.xyz, atom as u32, other) < SHORT_NITROSYL && element == 8,
+            _ => false,
+        };
+    }
     // Rings of three, five and seven unsaturated carbon atoms carry the charge that makes Hückel's rule hold.
     for ring in rings.iter().flat_map(|rings| &rings.small) {
         let charge = match ring.len() {
@@ -227,6 +238,19 @@ pub(super) fn distribute(
         costs.iter().skip(1).any(|&cost| cost < FORBIDDEN).then_some((costs, charges))
     };
     let per_charge = if z.len() > 3 { PER_CHARGE } else { 0 };
+    // Net charge of the saturated atoms of each fragment, looked up only once a part is charged.
+    let saturated = |bonds: &[Bond]| -> (Vec<u32>, Vec<i64>) {
+        let (fragment, count) = around.fragments();
+        let mut net = vec![0; count];
+        for (atom, &of) in fragment.iter().enumerate().filter(|&(atom, _)| costs(atom, bonds).is_none()) {
+            let valence: f64 = around.of(atom).iter().map(|&(_, k)| bonds[k as usize].order).sum();
+            let alone = around.degree(atom) == 0 || z[atom] == 1;
+            net[of as usize] += if alone { 0 } else { i64::from(charge_and_cost(z[atom], &shapes[atom], valence as i32).0) };
+        }
+        (fragment, net)
+    };
+    let before = bonds.to_vec();
+    let mut rest = None;
     let mut place = vec![u32::MAX; z.len()];
     let mut stack = Vec::new();
     for first in 0..z.len() {
@@ -269,7 +293,11 @@ pub(super) fn distribute(
                 PartBond { a: place[bond.a as usize] as usize, b: place[bond.b as usize] as usize, cost }
             })
             .collect();
-        let increments = part.settle(per_charge).unwrap_or_else(|| matching::increments(&part));
+        let others = || {
+            let (fragment, net) = rest.get_or_insert_with(|| saturated(&before));
+            net[fragment[first] as usize]
+        };
+        let increments = part.settle(per_charge, others).unwrap_or_else(|| matching::increments(&part));
         for (&k, increment) in whole.iter().zip(increments) {
             bonds[k as usize].order += f64::from(increment);
         }

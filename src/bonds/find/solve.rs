@@ -29,6 +29,10 @@ const BITS: u32 = 3;
 const SLOTS: usize = 20;
 /// Memories kept at one time; beyond this the part is too wide.
 const MOST_STATES: usize = 1 << 14;
+/// Memories made in one step before equal ones are put together.
+const MOST_BRANCHES: usize = 8 * MOST_STATES;
+/// Memories made in all: about the work of C60; wider parts go to the matching at once.
+const MOST_WORK: usize = 1 << 21;
 
 /// One memory: counts of the front packed in a key, the cost so far, where it came from and what was chosen.
 #[derive(Clone, Copy, Debug)]
@@ -50,32 +54,36 @@ impl Part {
         around
     }
 
-    /// Increments of every bond at a low total of the costs and of `per_charge` for each elementary charge of the whole
-    /// part; `None` where the front is too wide.
+    /// Increments of every bond at a low total of the costs and of `per_charge` for each elementary net charge of the
+    /// part together with `others`, the charge of what hangs on it; `None` where the front is too wide.
     ///
-    /// The sum over atoms alone is exact. Where it leaves a net charge, charges of that sign are made dearer by
-    /// `per_charge` and the sum is minimized again; the better of the two stays. Where the second is neutral, it is the
-    /// cheapest neutral one.
-    pub(super) fn settle(&self, per_charge: i64) -> Option<Vec<u8>> {
+    /// The sum over atoms alone is exact. Where it leaves charged atoms and a net charge, charges of that sign are made
+    /// dearer by `per_charge` and the sum is minimized again; the better of the two stays.
+    pub(super) fn settle(&self, per_charge: i64, others: impl FnOnce() -> i64) -> Option<Vec<u8>> {
         let first = self.solve()?;
-        let (cost, charge) = self.totals(&first);
-        if charge == 0 || per_charge == 0 {
+        let (cost, charge, charged) = self.totals(&first);
+        if !charged || per_charge == 0 {
+            return Some(first);
+        }
+        let others = others();
+        let net = charge + others;
+        if net == 0 {
             return Some(first);
         }
         let mut shifted = self.clone();
         for (costs, charges) in shifted.atoms.iter_mut().zip(&self.charges) {
             for (cost, &q) in costs.iter_mut().zip(charges).filter(|(cost, _)| **cost < FORBIDDEN) {
-                *cost += per_charge * charge.signum() * i64::from(q);
+                *cost += per_charge * net.signum() * i64::from(q);
             }
         }
         let second = shifted.solve()?;
-        let (other_cost, other_charge) = self.totals(&second);
-        let better = other_cost + per_charge * other_charge.abs() < cost + per_charge * charge.abs();
+        let (other_cost, other_charge, _) = self.totals(&second);
+        let better = other_cost + per_charge * (other_charge + others).abs() < cost + per_charge * net.abs();
         Some(if better { second } else { first })
     }
 
-    /// Cost and charge of the part with these increments.
-    fn totals(&self, increments: &[u8]) -> (i64, i64) {
+    /// Cost and charge of the part with these increments, and whether any atom is charged.
+    fn totals(&self, increments: &[u8]) -> (i64, i64, bool) {
         let mut held = vec![0_usize; self.atoms.len()];
         let mut cost = 0;
         for (bond, &pi) in self.bonds.iter().zip(increments) {
@@ -83,12 +91,14 @@ impl Part {
             held[bond.b] += usize::from(pi);
             cost += bond.cost.get(usize::from(pi)).copied().unwrap_or(FORBIDDEN);
         }
-        let mut charge = 0;
+        let (mut charge, mut charged) = (0, false);
         for ((costs, charges), held) in self.atoms.iter().zip(&self.charges).zip(held) {
             cost += costs.get(held).copied().unwrap_or(FORBIDDEN);
-            charge += i64::from(charges.get(held).copied().unwrap_or(0));
+            let q = charges.get(held).copied().unwrap_or(0);
+            charge += i64::from(q);
+            charged |= q != 0;
         }
-        (cost, charge)
+        (cost, charge, charged)
     }
 
     /// Increments of every bond at the least total cost; `None` where the front is too wide.
@@ -104,6 +114,7 @@ impl Part {
         let mut states = vec![State { key: 0, cost: 0, from: 0, choice: 0 }];
         let mut history: Vec<(Vec<usize>, Vec<(u32, u64)>)> = Vec::with_capacity(order.len());
         let mut next = Vec::new();
+        let mut work = 0;
         for atom in order {
             let slot = used.iter().position(|used| !used)?;
             used[slot] = true;
@@ -129,6 +140,10 @@ impl Part {
                     }
                 }
                 std::mem::swap(&mut states, &mut next);
+                work += states.len();
+                if work > MOST_WORK || states.len() > MOST_BRANCHES {
+                    return None;
+                }
                 left[atom] -= 1;
                 left[other] -= 1;
             }
@@ -252,8 +267,8 @@ mod tests {
             charges: vec![[-1, 0, 1, 0, 0], [0, 1, 0, 0, 0], [-1, 0, 1, 0, 0]],
             bonds: vec![PartBond { a: 0, b: 1, cost: [0; 3] }, PartBond { a: 1, b: 2, cost: [0; 3] }],
         };
-        assert_eq!(part.settle(0), Some(vec![0, 0]));
-        assert_eq!(part.settle(10).map(|found| found.iter().sum::<u8>()), Some(1));
+        assert_eq!(part.settle(0, || 0), Some(vec![0, 0]));
+        assert_eq!(part.settle(10, || 0).map(|found| found.iter().sum::<u8>()), Some(1));
     }
 
     /// All distributions of a small irregular part tried one by one give the same least cost.

@@ -24,6 +24,9 @@ pub(super) struct Shape {
     pub linear: bool,
     /// Three partners in a clear pyramid.
     pub pyramidal: bool,
+    /// A terminal oxygen or sulfur atom that may have a triple bond: on the carbon of CO, CS or of a linear acylium ion,
+    /// or at the short distance of NO+.
+    pub triple: bool,
     /// Four partners in a square.
     pub square: bool,
     /// There is also a partner by a bond without order.
@@ -61,38 +64,41 @@ fn options(z: i32, shape: &Shape, valence: i32) -> &'static [(i32, i64)] {
         (_, 14, _, 4) => &[(0, 0)],
         (_, 14, 6, 3) => if shape.partners == 1 { &[(-1, 250), (0, 500), (1, 500)] } else { trivalent() },
         (_, 14, 6, 2) => &[(0, 700), (-2, 900), (2, 900)],
-        (_, 14, 6, 1) => &[(0, 1000), (-3, 1200), (-1, 1200)],
-        (_, 14, 6, 0) => &[(0, 1200), (-4, 1200)],
+        (_, 14, 6, 1) => &[(0, 1600), (-3, 1600), (-1, 1600)],
+        (_, 14, 6, 0) => &[(0, 2000), (-4, 2000)],
         (_, 14, 6, _) => &[],
         (_, 14, _, 3) => trivalent(),
         (_, 14, 50 | 82, 2) => &[(0, 100)],
         (_, 14, _, 2) => &[(0, 300)],
         (_, 14, _, 1) => &[(0, 800), (1, 800)],
+        (_, 14, _, 5 | 6) if (shape.partners as i32) < valence => &[],
         (_, 14, _, 5) => &[(-1, 300)],
         (_, 14, _, 6) => &[(-2, 300)],
         (_, 14, _, 0) => &[(0, 1000), (4, 0), (2, 0)],
         (_, 15, _, 3) => &[(0, 0)],
         (_, 15, 7, 4) => &[(1, 150), (0, 700)],
+        (_, 15, 7, 2) if shape.partners == 1 => &[(-1, 150), (0, 400), (1, 500)],
         (_, 15, 7, 2) => &[(-1, 250), (0, 400), (1, 500)],
         (_, 15, 7, 1) => &[(0, 700), (-2, 800)],
-        (_, 15, 7, 5) => &[(0, 1200)],
+        (_, 15, 7, 5) if shape.partners <= 3 => &[(0, 1200)],
         (_, 15, 7, 0) => &[(-3, 900), (0, 900)],
         (_, 15, 7, _) => &[],
         (_, 15, _, 5) => &[(0, 30)],
         (_, 15, _, 4) => &[(1, 200), (-1, 300), (0, 600)],
         (_, 15, _, 2) => &[(-1, 250), (0, 500), (1, 500)],
-        (_, 15, _, 6) => &[(-1, 200)],
+        (_, 15, _, 6) => if shape.partners >= 6 { &[(-1, 200)] } else { &[] },
         (_, 15, _, 1) => &[(0, 700), (-2, 800)],
         (_, 15, _, 0) => &[(-3, 900), (3, 600), (0, 900)],
         (_, 16, _, 2) => &[(0, 0)],
         (_, 16, _, 0) => &[(-2, 400), (0, 500)],
         (_, 16, 8, 1) => &[(-1, 230), (0, 300), (1, 900)],
+        (_, 16, _, 3) if shape.partners == 1 => if shape.triple { &[(1, 150)] } else { &[] },
         (_, 16, 8, 3) => &[(1, 150)],
         (_, 16, 8, _) => &[],
         (_, 16, _, 1) => &[(-1, 180), (0, 350), (1, 900)],
         (_, 16, _, 3) => &[(1, 300), (-1, 400), (0, 600)],
         (_, 16, _, 4) => &[(0, 50)],
-        (_, 16, _, 5) => &[(1, 400), (-1, 400), (0, 600)],
+        (_, 16, _, 5) => if shape.partners >= 5 { &[(1, 400), (-1, 400), (0, 600)] } else { &[(1, 800)] },
         (_, 16, _, 6) => &[(0, 70)],
         (_, 17, _, 1) => &[(0, 0)],
         (_, 17, _, 0) => &[(-1, 150), (0, 300), (1, 900)],
@@ -100,9 +106,10 @@ fn options(z: i32, shape: &Shape, valence: i32) -> &'static [(i32, i64)] {
         (_, 17, 9, _) => &[],
         (_, 17, _, 2) => if shape.linear { &[(-1, 300), (1, 300), (0, 600)] } else { &[(1, 300), (-1, 300), (0, 600)] },
         (_, 17, _, 3) => &[(0, 50)],
+        (_, 17, _, 4) if shape.partners < 4 => &[(1, 600), (0, 900)],
         (_, 17, _, 4) => if shape.square { &[(-1, 300), (1, 300), (0, 600)] } else { &[(1, 300), (-1, 300), (0, 600)] },
         (_, 17, _, 5) => &[(0, 60)],
-        (_, 17, _, 6) => &[(1, 300), (-1, 300)],
+        (_, 17, _, 6) => if shape.partners >= 6 { &[(1, 300), (-1, 300)] } else { &[(1, 600)] },
         (_, 17, _, 7) => &[(0, 70)],
         (Kind::NobleGas, _, _, 0) => &[(0, 0)],
         (Kind::NobleGas, _, 36 | 54 | 86, 2 | 4 | 6 | 8) => &[(0, 50)],
@@ -147,10 +154,8 @@ pub(super) fn is_possible(z: i32, shape: &Shape, valence: i32, charge: i32) -> b
         _ if shape.shared || shape.cluster => return valence <= 6,
         _ => {}
     }
-    // Nitrogen of valence 5 is an old way to write nitro groups and the like.
     let open = match (z, valence) {
         (6, 0 | 1) | (7, 0) => false,
-        (7, 5) => shape.partners <= 3,
         _ => true,
     };
     open && options(z, shape, valence).iter().any(|option| option.0 == charge)
@@ -158,6 +163,10 @@ pub(super) fn is_possible(z: i32, shape: &Shape, valence: i32, charge: i32) -> b
 
 /// Cost of `pi` double-bond increments at the angles of this atom.
 pub(super) fn angle_cost(z: i32, shape: &Shape, pi: usize) -> i64 {
+    if matches!(z, 16 | 34 | 52) && shape.partners == 3 && pi == 3 && shape.pyramidal {
+        // SO3 is flat, sulfite is a pyramid.
+        return 20 * UNIT;
+    }
     if !matches!(z, 6 | 7) {
         return 0;
     }
