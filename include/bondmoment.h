@@ -304,7 +304,7 @@ const char *bmom_selector_name(int32_t selector);
 int32_t bmom_selector(const char *name, int64_t name_length, int32_t *selector);
 
 /*
- The words of a status of a function, such as "length_A must be above 0 Å".
+ The words of a status of a function: which argument is at fault, and what is wrong with it.
  Given: 1 function, its name without bmom_ and _column, or an empty text [text]; 2 status. Returned: 3 text (UTF-8).
  Status: UNKNOWN_NAME, BUFFER_TOO_SMALL, NOT_UTF8, NULL_POINTER, NEGATIVE_COUNT.
  */

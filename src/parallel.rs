@@ -38,8 +38,7 @@ pub fn map_rows<T: Send>(n: usize, work: usize, threads: Threads, row: impl Fn(u
     }
     .min(n);
     if count > 1 && work >= WORTH_A_POOL {
-        let pooled =
-            rayon::ThreadPoolBuilder::new().num_threads(count).stack_size(STACK);
+        let pooled = rayon::ThreadPoolBuilder::new().num_threads(count).stack_size(STACK);
         (threads.before_start)();
         let results = pooled.build_scoped(
             |thread| {

@@ -52,7 +52,8 @@ fn build(source: &Path, standard: &str, link: Link, more: &[&str], folder: &Path
         command.arg(source);
     }
     match link {
-        Link::Static => command.arg(libraries().join("libbondmoment.a")),
+        // Without the library's debug information, which would make each program 100 MB.
+        Link::Static => command.arg(libraries().join("libbondmoment.a")).arg("-Wl,--strip-debug"),
         Link::Shared => {
             let library = libraries().join("libbondmoment.so");
             let named = folder.join(env!("BMOM_SONAME"));
@@ -126,8 +127,8 @@ fn as_c11_with_the_shared_library() {
 }
 
 #[test]
-fn as_c17_with_the_static_library() {
-    all_programs("c17", Link::Static);
+fn as_c17_with_the_shared_library() {
+    all_programs("c17", Link::Shared);
 }
 
 #[test]

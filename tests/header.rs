@@ -49,8 +49,17 @@ fn exported_are_the_functions_of_the_header() {
 }
 
 /// Numbers without a unit.
-const PURE: &[&str] =
-    &["electronegativity", "delta_chi", "polar_from", "ionic_from", "bond_order", "found_order", "value", "values", "converted"];
+const PURE: &[&str] = &[
+    "electronegativity",
+    "delta_chi",
+    "polar_from",
+    "ionic_from",
+    "bond_order",
+    "found_order",
+    "value",
+    "values",
+    "converted",
+];
 const UNITS: &[&str] = &["A", "A2", "A3", "D", "D2", "e", "u", "K", "percent", "MHz"];
 
 fn has_unit(name: &str) -> bool {
@@ -117,7 +126,12 @@ fn parameters_stand_in_one_order() {
         let first_output = function.parameters.iter().position(Parameter::is_output);
         let last_input = function.parameters.iter().rposition(Parameter::is_input_array);
         if let (Some(output), Some(input)) = (first_output, last_input) {
-            assert!(input < output, "{name}: {} after {}", function.parameters[input].name, function.parameters[output].name);
+            assert!(
+                input < output,
+                "{name}: {} after {}",
+                function.parameters[input].name,
+                function.parameters[output].name
+            );
         }
     }
 }
@@ -127,13 +141,14 @@ fn parameters_stand_in_one_order() {
 fn column_forms_follow_from_plain_forms() {
     let all = functions(HEADER);
     let mut pairs = 0;
-    for column in all.iter().filter(|function| function.name.ends_with("_column") && function.name != "bmom_table_column") {
+    for column in
+        all.iter().filter(|function| function.name.ends_with("_column") && function.name != "bmom_table_column")
+    {
         let plain_name = column.name.trim_end_matches("_column");
         let plain = all.iter().find(|function| function.name == plain_name);
         let plain = plain.unwrap_or_else(|| panic!("{} has no plain form", column.name));
-        let added = [
-            "settings", "threads", "n", "atom_offsets", "bond_offsets", "found_offsets", "text_offsets", "row_status",
-        ];
+        let added =
+            ["settings", "threads", "n", "atom_offsets", "bond_offsets", "found_offsets", "text_offsets", "row_status"];
         let mut kept = Vec::new();
         for parameter in column.parameters.iter().filter(|parameter| !added.contains(&parameter.name.as_str())) {
             kept.push(parameter.name.trim_start_matches("row_").to_owned());
@@ -183,7 +198,8 @@ fn versions_agree() {
     // SAFETY: both functions return static NUL-terminated texts.
     let (version, data) =
         unsafe { (CStr::from_ptr(about::bmom_version()), CStr::from_ptr(about::bmom_data_version())) };
-    let manifest = std::fs::read_to_string(Path::new(env!("CARGO_MANIFEST_DIR")).join("Cargo.toml")).expect("Cargo.toml");
+    let manifest =
+        std::fs::read_to_string(Path::new(env!("CARGO_MANIFEST_DIR")).join("Cargo.toml")).expect("Cargo.toml");
     assert!(manifest.contains(&format!("\nversion = \"{}\"\n", value("VERSION"))), "Cargo.toml");
     assert_eq!(version.to_str(), Ok(value("VERSION").as_str()));
     assert_eq!(data.to_str(), Ok(value("DATA_VERSION").as_str()));

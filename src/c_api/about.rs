@@ -74,7 +74,7 @@ pub unsafe extern "C" fn bmom_selector(name: *const c_char, name_length: i64, se
     })
 }
 
-/// The words of a status of a function, such as "length_A must be above 0 Å".
+/// The words of a status of a function: which argument is at fault, and what is wrong with it.
 /// Given: 1 function, its name without bmom_ and _column, or an empty text [text]; 2 status. Returned: 3 text (UTF-8).
 /// Status: UNKNOWN_NAME, BUFFER_TOO_SMALL, NOT_UTF8, NULL_POINTER, NEGATIVE_COUNT.
 #[unsafe(no_mangle)]
@@ -88,7 +88,8 @@ pub unsafe extern "C" fn bmom_status_message(
 ) -> i32 {
     guard(|| {
         // SAFETY: the caller's promise about every pointer, stated in the header.
-        let (function, out) = unsafe { (text_in(1, function, function_length)?, TextOut::new(3, text, capacity, needed)?) };
+        let (function, out) =
+            unsafe { (text_in(1, function, function_length)?, TextOut::new(3, text, capacity, needed)?) };
         let function = match function {
             "" => None,
             name => Some(catalogue::function(name).map_err(|failure| failure.argument(1))?),
@@ -199,12 +200,15 @@ fn fixed(cell: &'static OnceBox<CString>, make: impl FnOnce() -> String) -> *con
     text
 }
 
-fn listed(cell: &'static OnceBox<Vec<CString>>, index: Option<usize>, make: impl FnOnce() -> Vec<String>) -> *const c_char {
+fn listed(
+    cell: &'static OnceBox<Vec<CString>>,
+    index: Option<usize>,
+    make: impl FnOnce() -> Vec<String>,
+) -> *const c_char {
     let mut text = c"UNKNOWN".as_ptr();
     guard(|| {
-        let texts = cell.get_or_init(|| {
-            Box::new(make().into_iter().map(|text| CString::new(text).unwrap_or_default()).collect())
-        });
+        let texts = cell
+            .get_or_init(|| Box::new(make().into_iter().map(|text| CString::new(text).unwrap_or_default()).collect()));
         if let Some(known) = index.and_then(|index| texts.get(index)) {
             text = known.as_ptr();
         }

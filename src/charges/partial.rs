@@ -16,6 +16,9 @@ pub struct Charges {
     pub charge: Vec<f64>,
     /// Their standard uncertainties [e]; `None`, or NaN for one atom: not known.
     pub u: Option<Vec<f64>>,
+    /// One number a bond [e]: the charge that its atom a has given to its atom b along the bond, above 0 where a is the
+    /// positive end; `None` for charges that are not made up of bonds.
+    pub along_bond: Option<Vec<f64>>,
 }
 
 impl Charges {
@@ -77,7 +80,8 @@ pub static PARTIAL_CHARGES: Function = Function {
     notes: &[
         "The charges sum to the net charge; they do not depend on the geometry.",
         "PEOE 1980 has types for H, C, N, O, F, Cl, Br, I and for S with single bonds; any other atom is NO_DATA.",
-        "PEOE 1980 describes the sigma bonds only: cyano groups come out far too little polar, C=O and C-Cl too little, NO2 (from formal charges) too much, and CO with the wrong sign.",
+        "PEOE 1980 describes the sigma bonds only: C=O, NO2 and cyano groups come out far too little polar, and CO with the wrong sign.",
+        "Delocalised formal charge is shared first (carboxylate -1/2 each); opposite formal charges on bonded atoms (nitro, N-oxide) cancel first.",
         "The model states no uncertainty.",
         "CHARGES_GIVEN is not allowed here: there is nothing to compute.",
     ],
@@ -104,7 +108,7 @@ pub fn partial_charges(
         (CHARGES_GIVEN, Some((charge, u))) => given_charges(molecule, charge, u),
         (CHARGES_GIVEN, None) => Err(Failure::of(Code::NotAllowed, 1)),
         (_, Some(_)) => Err(Failure::of(Code::NotAllowed, GIVEN)),
-        (CHARGES_PEOE_1980, None) => Ok(Charges { charge: peoe_charges(molecule, bonding)?, u: None }),
+        (CHARGES_PEOE_1980, None) => peoe_charges(molecule, bonding),
         (_, None) => Err(Failure::of(Code::WrongSelector, 1)),
     }
 }
@@ -131,5 +135,5 @@ fn given_charges(molecule: Molecule<'_>, charge: &[f64], u: Option<&[f64]>) -> R
             return fault(Code::NotFinite, atom);
         }
     }
-    Ok(Charges { charge: charge.to_vec(), u: u.map(<[f64]>::to_vec) })
+    Ok(Charges { charge: charge.to_vec(), u: u.map(<[f64]>::to_vec), along_bond: None })
 }

@@ -3,6 +3,7 @@
 use std::io::{BufWriter, Write, stdout};
 use std::sync::atomic::AtomicBool;
 
+use bondmoment::moments::PEOE_RMS_D;
 use bondmoment::library::{Settings, Table, Tabulation, Wanted};
 use bondmoment::parallel::Threads;
 use bondmoment::selectors::FORMAT_BY_CONTENT;
@@ -69,7 +70,7 @@ fn explain(out: &mut impl Write, table: &Table) -> Result<(), Trouble> {
          - One conformer is not the molecule: {one_conformer} rows are undecided or marked for that, 1,2-dichloroethane (anti)\n  \
            among them; hexane and cyclohexane turn too, and stay non-polar.\n\
          - The arrow of a dipole points from - to +; \"- end\" names the negative end of the strongest bond.\n\
-         - PEOE misses measured dipoles by 0.7 D (rms) and says nothing of pi bonds: nitrobenzene, measured at 4.2 D, comes\n  \
+         - PEOE misses measured dipoles by {PEOE_RMS_D} D (rms) and says nothing of pi bonds: nitrobenzene, measured at 4.2 D, comes\n  \
            out far too small. A verdict counts that in.\n\
          - Broken records cost themselves only: the file among_good.sdf has three, and the two good ones around them are there.\n\n\
          Your own files: bondmoment tabulate FILE... --into FOLDER",

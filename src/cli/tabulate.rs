@@ -12,6 +12,7 @@ use bondmoment::library::settings::{Holds, SETTINGS};
 use bondmoment::library::tabulation::LeftOut;
 use bondmoment::library::write::{CsvStyle, write_csv, write_json_lines};
 use bondmoment::library::{Settings, Table, Tables, Tabulation, Wanted};
+use bondmoment::moments::PEOE_RMS_D;
 use bondmoment::parallel::Threads;
 use bondmoment::selectors::FORMAT_BY_CONTENT;
 use bondmoment::tables;
@@ -115,6 +116,9 @@ impl Tabulate {
             first = false;
             Ok(())
         })?;
+        if layout == Layout::Plain && !first {
+            footnote(&mut out)?;
+        }
         out.flush()?;
         Ok(outcome)
     }
@@ -284,10 +288,13 @@ pub(crate) fn plain(out: &mut impl Write, table: &Table, first: bool) -> Result<
             (bond, end) if bond.is_empty() || end.is_empty() => bond.into_owned(),
             (bond, end) => format!("{bond} {end}"),
         };
-        let remarks = match (status.text(row), detail.text(row)) {
-            (status, detail) if status == "OK" => detail.into_owned(),
-            (status, detail) if detail.is_empty() => status.into_owned(),
-            (status, detail) => format!("{status}: {detail}"),
+        // What holds for most rows stands once, below the table.
+        let detail = detail.text(row);
+        let told: Vec<&str> = detail.split("; ").filter(|words| !is_common(words)).collect();
+        let remarks = match (status.text(row), told.join("; ")) {
+            (status, told) if status == "OK" => told,
+            (status, told) if told.is_empty() => status.into_owned(),
+            (status, told) => format!("{status}: {told}"),
         };
         let line = format!(
             "{:<26} {:<12} {:>7}  {:<10} {:<12} {:>5}  {}",
@@ -301,6 +308,24 @@ pub(crate) fn plain(out: &mut impl Write, table: &Table, first: bool) -> Result<
         );
         writeln!(out, "{}", line.trim_end())?;
     }
+    Ok(())
+}
+
+/// Remarks that most rows have.
+const COMMON: [&str; 2] = ["bonds found from the coordinates", "judged with the rms of the model"];
+
+fn is_common(words: &str) -> bool {
+    COMMON.iter().any(|common| words.starts_with(common))
+}
+
+/// What the plain columns leave out.
+pub(crate) fn footnote(out: &mut impl Write) -> Result<(), Trouble> {
+    writeln!(
+        out,
+        "\nDipoles in D, by charges without an uncertainty of their own unless you gave some: verdicts count the model's rms of\n\
+         {PEOE_RMS_D} D in. The arrow points from - to +; \"- end\" is the negative end of the strongest bond, dchi its difference of\n\
+         electronegativity. Uncertainties, vectors, bonds and atoms: --into FOLDER, or --layout csv."
+    )?;
     Ok(())
 }
 

@@ -20,6 +20,8 @@ pub(super) const MOST_TOLD: usize = 8;
 /// What the models say of a record.
 pub(super) struct Computed {
     charge: Vec<Quantity>,
+    /// Charge given along each bond from its atom a to its atom b [e]; NaN where the model has none.
+    along_bond: Vec<f64>,
     /// Why the atoms of a fragment have no charge.
     missing: Vec<Option<Failure>>,
     fragment: Vec<u32>,
@@ -42,6 +44,12 @@ impl Computed {
         }
     }
 
+    /// Charge that atom a of a bond has given to atom b along it [e].
+    pub fn bond_charge(&self, bond: usize, a: usize) -> Result<f64, Code> {
+        self.charge(a)?;
+        self.along_bond.get(bond).copied().filter(|q| !q.is_nan()).ok_or(Code::NoData)
+    }
+
     /// The first fault of the charge model.
     pub fn charge_failure(&self) -> Option<Failure> {
         self.missing.iter().flatten().next().copied()
@@ -57,6 +65,8 @@ impl Computed {
 struct Part {
     /// Its atoms by their index in the record.
     atoms: Vec<usize>,
+    /// Its bonds by their index in the record.
+    bonds: Vec<usize>,
     atomic_number: Vec<i32>,
     formal_charge: Option<Vec<i32>>,
     xyz: Vec<[f64; 3]>,
@@ -68,6 +78,7 @@ pub(super) fn compute(record: &Record, bonding: &Bonding, kind: &Kind, settings:
     let no_charge = Quantity::without_u(f64::NAN);
     let mut computed = Computed {
         charge: vec![no_charge; record.atomic_number.len()],
+        along_bond: vec![f64::NAN; bonding.bonds.len()],
         missing: vec![None; kind.fragments],
         fragment: kind.fragment.clone(),
         verdict: Err(Failure::new(Code::SeveralFragments)),
@@ -89,7 +100,7 @@ pub(super) fn compute(record: &Record, bonding: &Bonding, kind: &Kind, settings:
     if kind.fragments == 1 {
         let all: Vec<usize> = (0..record.atomic_number.len()).collect();
         let charges = charges_of(record, &all, record.molecule(), bonding, settings);
-        keep(&mut computed, 0, &all, &charges);
+        keep(&mut computed, 0, &all, None, &charges);
         computed.verdict = geometry.and_then(|()| {
             let (verdict, judged) = judge(record.molecule(), bonding, &charges, settings)?;
             computed.not_judged = !judged;
@@ -104,7 +115,7 @@ pub(super) fn compute(record: &Record, bonding: &Bonding, kind: &Kind, settings:
             xyz: &part.xyz,
         };
         let charges = charges_of(record, &part.atoms, molecule, &part.bonding, settings);
-        keep(&mut computed, number, &part.atoms, &charges);
+        keep(&mut computed, number, &part.atoms, Some(&part.bonds), &charges);
         if number < MOST_TOLD {
             let judged = geometry.and_then(|()| judge(molecule, &part.bonding, &charges, settings));
             computed.told.push(words(number, part, judged.map(|(verdict, _)| verdict)));
@@ -136,10 +147,22 @@ fn charges_of(
     partial_charges(settings.charge_model, molecule, bonding, given)
 }
 
-/// Puts the charges of a fragment where its atoms are.
-fn keep(computed: &mut Computed, fragment: usize, atoms: &[usize], charges: &Result<Charges, Failure>) {
+/// Puts the charges of a fragment where its atoms and bonds are; `bonds` are those of the record, all without it.
+fn keep(
+    computed: &mut Computed,
+    fragment: usize,
+    atoms: &[usize],
+    bonds: Option<&[usize]>,
+    charges: &Result<Charges, Failure>,
+) {
     match charges {
         Ok(charges) => {
+            for (k, &q) in charges.along_bond.iter().flatten().enumerate() {
+                let bond = bonds.map_or(Some(k), |bonds| bonds.get(k).copied());
+                if let Some(slot) = bond.and_then(|bond| computed.along_bond.get_mut(bond)) {
+                    *slot = q;
+                }
+            }
             for (k, &atom) in atoms.iter().enumerate() {
                 let u = charges.u.as_ref().and_then(|u| u.get(k)).copied().unwrap_or(f64::NAN);
                 if let (Some(slot), Some(&q)) = (computed.charge.get_mut(atom), charges.charge.get(k)) {
@@ -181,6 +204,7 @@ fn judge(
 fn parts(record: &Record, bonding: &Bonding, kind: &Kind) -> Vec<Part> {
     let empty = || Part {
         atoms: Vec::new(),
+        bonds: Vec::new(),
         atomic_number: Vec::new(),
         formal_charge: record.formal_charge.as_ref().map(|_| Vec::new()),
         xyz: Vec::new(),
@@ -203,6 +227,7 @@ fn parts(record: &Record, bonding: &Bonding, kind: &Kind) -> Vec<Part> {
         let at = |atom: u32| place.get(atom as usize).copied();
         let fragment = kind.fragment.get(bond.a as usize).map_or(usize::MAX, |&f| f as usize);
         if let (Some(part), Some(a), Some(b)) = (parts.get_mut(fragment), at(bond.a), at(bond.b)) {
+            part.bonds.push(i);
             part.bonding.bonds.push(Bond { a, b, order: bond.order });
             part.bonding.aromatic.push(bonding.aromatic.get(i).copied().unwrap_or(false));
         }

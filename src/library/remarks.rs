@@ -64,7 +64,7 @@ pub(super) fn detail(
         words.push(format!("{} more fragments", kind.fragments - MOST_TOLD));
     }
     if computed.verdict.as_ref().is_ok_and(|verdict| verdict.by_rms && !verdict.dipole.charged) {
-        words.push(format!("the model has no uncertainty of its own; judged with its rms of {PEOE_RMS_D:.2} D"));
+        words.push(format!("judged with the rms of the model, {PEOE_RMS_D:.2} D"));
     }
     if computed.not_judged {
         words.push("the charges given have no uncertainty, so the polarity is not decided".to_owned());

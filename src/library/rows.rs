@@ -63,7 +63,7 @@ pub(super) fn add_rows(
                         row.polarity(bonding, &kind, &computed, tables);
                     }
                     if wanted.bonds {
-                        row.bonds(bonding, &kind, tables);
+                        row.bonds(bonding, &kind, &computed, tables);
                     }
                     if wanted.atoms {
                         row.atoms(Some((bonding, &kind, &computed)), tables);
@@ -166,7 +166,14 @@ impl Row<'_> {
         match &strongest {
             Ok(bond) => {
                 negative = bond.negative.map_or(String::new(), |atom| atom_label(&record.atomic_number, atom));
-                let charge = bond.negative.map_or(Err(Code::NoData), |atom| computed.charge(atom).map(|q| q.value));
+                // Counted at the positive end, so that it is positive where the model agrees with the electronegativities.
+                let charge = match bond.negative {
+                    Some(atom) => {
+                        let given = computed.bond_charge(bond.bond, bond.a);
+                        given.map(|q| if atom == bond.a { -q } else { q })
+                    }
+                    None => Err(Code::NoData),
+                };
                 cells.extend([Cell::Text(&bond.label), Cell::Number(bond.delta_chi), Cell::Text(&negative)]);
                 cells.push(number(charge));
             }
@@ -209,7 +216,7 @@ impl Row<'_> {
         tables.polarity.push_row(&cells);
     }
 
-    fn bonds(&self, bonding: &Bonding, kind: &Kind, tables: &mut Tables) {
+    fn bonds(&self, bonding: &Bonding, kind: &Kind, computed: &Computed, tables: &mut Tables) {
         let record = self.record;
         let states = states_of(record, bonding, self.settings.covalent_radii);
         for (i, &bond) in bonding.bonds.iter().enumerate() {
@@ -246,6 +253,7 @@ impl Row<'_> {
                 number(polarity.map(|p| p.delta_chi.value)),
                 polarity.map_or_else(Cell::None, |_| Cell::Text(&negative)),
                 number(ionic),
+                number(computed.bond_charge(i, bond.a as usize)),
                 polarity.map_or_else(Cell::None, |p| Cell::Text(p.class.title())),
             ]);
         }

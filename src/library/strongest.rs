@@ -10,6 +10,8 @@ use crate::status::{Code, Failure};
 
 /// The bond of greatest |Δχ|.
 pub(super) struct StrongestBond {
+    /// Index of the bond.
+    pub bond: usize,
     /// 0-based atoms, a < b.
     pub a: usize,
     pub b: usize,
@@ -67,7 +69,7 @@ pub(super) fn strongest_bond(record: &Record, bonding: &Bonding, settings: &Sett
         let atom = |atom| atom_label(&record.atomic_number, atom);
         format!("{}{}{}", atom(a), order_sign(order), atom(b))
     });
-    Ok(StrongestBond { a, b, label, delta_chi: polarity.delta_chi.value.abs(), negative })
+    Ok(StrongestBond { bond: i, a, b, label, delta_chi: polarity.delta_chi.value.abs(), negative })
 }
 
 /// Polarity of a bond by the scale and the limits of the settings.

@@ -2,9 +2,9 @@
 //! verdict polar or non-polar.
 
 mod algebra;
-mod hinges;
 pub mod dipole;
 pub mod flexibility;
+mod hinges;
 pub mod polarity;
 pub mod symmetry;
 

@@ -20,7 +20,7 @@ pub const SYMMETRY_WITHIN_A: f64 = 0.01;
 /// set that the model has types for and whose point group allows a dipole. The model states no uncertainty; for the
 /// verdict this number stands for the standard uncertainty of every component, C = u² 1. That is a convention: magnitudes
 /// say nothing about errors of direction.
-pub const PEOE_RMS_D: f64 = 0.93;
+pub const PEOE_RMS_D: f64 = 0.77;
 
 /// Radius, in standard deviations, of the sphere that holds 95 % of a three-dimensional normal distribution
 /// (χ²(0.95; 3) = 7.815, whose root is 2.796).

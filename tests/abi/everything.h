@@ -56,8 +56,10 @@ static inline uint64_t scalars(struct answers *clear, uint64_t digest)
     MIX(bmom_charge_from_dipole(d, 0.01, 1.3, 0.001, x, u));
     MIX(bmom_dipole_from_charge(d, 0.01, 1.3, 0.001, x, u));
     MIX(bmom_length_from_dipole(d, 0.01, 0.7, 0.001, x, u));
+    MIX(bmom_dipole_from_charge(from_bits(UINT64_C(0x0010000000000000)), 0.0, 0.1, 0.0, x, u)); /* subnormal */
     MIX(bmom_number_text(d, clear->text, 2000, &clear->needed));
     MIX(bmom_number_read("1.0145768e-3", -1, x));
+    MIX(bmom_number_read("5e-324", -1, x));
     MIX(bmom_status_message("bond_length", -1, 1000 * i + BMOM_OUT_OF_RANGE, clear->text, 2000, &clear->needed));
   }
   return digest;

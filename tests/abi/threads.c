@@ -104,17 +104,17 @@ static void on_signal(int number)
 
 static void signals(struct many *many)
 {
-  struct sigaction action, before;
+  struct sigaction action;
   memset(&action, 0, sizeof action);
   action.sa_handler = on_signal;
   host = pthread_self();
-  CHECK(sigaction(SIGALRM, &action, &before) == 0);
+  CHECK(sigaction(SIGALRM, &action, NULL) == 0);
   ualarm(1000, 1000);
   for (int i = 0; i < 20; ++i) many_dipoles(many, 4);
   ualarm(0, 0);
   CHECK(handled == 1);
   CHECK(elsewhere == 0);
-  CHECK(sigaction(SIGALRM, &before, NULL) == 0);
+  /* The handler stays: a last signal may still be on its way. */
 }
 
 struct stopper {

@@ -134,11 +134,20 @@ fn catalogue_and_header_declare_the_same_functions() {
     let find = |name: &str| -> &Function {
         header.iter().find(|function| function.name == name).unwrap_or_else(|| panic!("{name} is not in the header"))
     };
+    let names = |parameters: &[Parameter]| {
+        let words: Vec<String> = parameters.iter().map(|one| format!("{} {}", one.kind, one.name)).collect();
+        words.join(", ")
+    };
+    let mut problems = Vec::new();
     for function in list(&catalogue, "functions") {
         let name = word(function, "name");
         for (column, suffix) in [(false, ""), (true, "_column")] {
             let declared = find(&format!("bmom_{name}{suffix}"));
-            assert_eq!(declared.parameters, parameters_of(function, list(&catalogue, "blocks"), column), "{}", declared.name);
+            let expected = parameters_of(function, list(&catalogue, "blocks"), column);
+            if declared.parameters != expected {
+                let (header, catalogue) = (names(&declared.parameters), names(&expected));
+                problems.push(format!("{}\n  header: {header}\n  catalogue: {catalogue}", declared.name));
+            }
         }
         let numbers: Vec<i64> = list(function, "arguments")
             .iter()
@@ -146,24 +155,33 @@ fn catalogue_and_header_declare_the_same_functions() {
             .filter_map(|argument| argument["number"].as_i64())
             .collect();
         assert!(numbers.iter().copied().eq(1..=numbers.len() as i64), "{name}: {numbers:?}");
-        assert_eq!(list(function, "results").iter().filter(|result| is(result, "main")).count(), 1, "{name}: main result");
+        assert_eq!(
+            list(function, "results").iter().filter(|result| is(result, "main")).count(),
+            1,
+            "{name}: main result"
+        );
     }
+    assert!(problems.is_empty(), "the header and the catalogue differ:\n{}", problems.join("\n"));
 }
 
 #[test]
 fn catalogue_and_header_name_the_same_numbers() {
     let catalogue = catalogue_of_the_library();
     let mut expected = BTreeSet::new();
-    for (group, number, prefix) in [("statuses", "code", ""), ("remarks", "bit", "REMARK_"), ("selectors", "selector", "")] {
+    for (group, number, prefix) in
+        [("statuses", "code", ""), ("remarks", "bit", "REMARK_"), ("selectors", "selector", "")]
+    {
         for entry in list(&catalogue, group) {
             let number = entry[number].as_i64().unwrap_or_else(|| panic!("{entry} has no number"));
             assert!(expected.insert((format!("{prefix}{}", word(entry, "name")), number.to_string())), "{entry} twice");
         }
     }
     let versions = ["ABI_VERSION", "VERSION", "DATA_VERSION"];
-    let found: BTreeSet<_> = macros(HEADER).into_iter().filter(|(name, _)| !versions.contains(&name.as_str())).collect();
+    let found: BTreeSet<_> =
+        macros(HEADER).into_iter().filter(|(name, _)| !versions.contains(&name.as_str())).collect();
     assert_eq!(found, expected);
-    let numbers: Vec<i64> = list(&catalogue, "selectors").iter().filter_map(|entry| entry["selector"].as_i64()).collect();
+    let numbers: Vec<i64> =
+        list(&catalogue, "selectors").iter().filter_map(|entry| entry["selector"].as_i64()).collect();
     assert!(!numbers.contains(&0) && numbers.iter().all(|&number| number > 0 && number < i64::from(i32::MAX)));
     for unit in list(&catalogue, "units") {
         assert!(numbers.contains(&unit["selector"].as_i64().unwrap_or(0)), "{unit}");
@@ -211,7 +229,8 @@ fn catalogue_keeps_its_own_rules() {
         }
     }
     for table in list(&catalogue, "tables") {
-        let names: BTreeSet<String> = list(table, "columns").iter().map(|column| word(column, "name").to_lowercase()).collect();
+        let names: BTreeSet<String> =
+            list(table, "columns").iter().map(|column| word(column, "name").to_lowercase()).collect();
         assert_eq!(names.len(), list(table, "columns").len(), "two columns of {} are alike", word(table, "name"));
     }
 }
@@ -220,14 +239,19 @@ fn catalogue_keeps_its_own_rules() {
 #[test]
 fn examples_of_the_catalogue_hold() {
     let catalogue = catalogue_of_the_library();
-    let text_of = |value: &Value| value.as_str().map_or_else(|| number_text(value.as_f64().unwrap_or(f64::NAN)), str::to_owned);
+    let text_of =
+        |value: &Value| value.as_str().map_or_else(|| number_text(value.as_f64().unwrap_or(f64::NAN)), str::to_owned);
     let mut checked = 0;
     for function in list(&catalogue, "functions") {
         let name = word(function, "name");
         let declared = catalogue::function(name).expect("a function of the catalogue");
         for example in list(function, "examples") {
-            let given: Vec<(&str, String)> =
-                example["given"].as_object().into_iter().flatten().map(|(name, value)| (name.as_str(), text_of(value))).collect();
+            let given: Vec<(&str, String)> = example["given"]
+                .as_object()
+                .into_iter()
+                .flatten()
+                .map(|(name, value)| (name.as_str(), text_of(value)))
+                .collect();
             let given: Vec<(&str, &str)> = given.iter().map(|(name, text)| (*name, text.as_str())).collect();
             let results = evaluate(declared, &given).unwrap_or_else(|words| panic!("{name}: {words}"));
             let within = example["within"].as_f64().unwrap_or(f64::NAN);

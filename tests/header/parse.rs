@@ -83,8 +83,7 @@ fn function(statement: &str, comment: String) -> Function {
     let (head, parameters) = statement.split_once('(').expect("a function has parameters");
     let Parameter { kind: returns, name } = parameter(head);
     let parameters = parameters.trim_end_matches(')');
-    let parameters =
-        if parameters == "void" { Vec::new() } else { parameters.split(',').map(parameter).collect() };
+    let parameters = if parameters == "void" { Vec::new() } else { parameters.split(',').map(parameter).collect() };
     Function { name, returns, parameters, comment }
 }
 
@@ -92,7 +91,10 @@ fn parameter(text: &str) -> Parameter {
     let text = text.trim();
     let at = text.rfind(['*', ' ']).map_or(0, |at| at + 1);
     let (kind, name) = text.split_at(at);
-    Parameter { kind: kind.replace("struct ", "").replace(" *", "*").trim().replacen('*', " *", 1), name: name.to_owned() }
+    Parameter {
+        kind: kind.replace("struct ", "").replace(" *", "*").trim().replacen('*', " *", 1),
+        name: name.to_owned(),
+    }
 }
 
 /// The macros with a value: name without `BMOM_`, value without its comment.

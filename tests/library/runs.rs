@@ -161,8 +161,11 @@ fn csv_is_harmless_and_json_lines_are_json() {
     assert_eq!(&rows[6][column("data_Note")], "'=1+1");
     // HF: 3.98 - 2.20 (handbook column).
     assert_eq!(&rows[3][column("delta_chi")], "1,78");
+    // The fluorine of HF lies on the positive z axis of the file, so the dipole, from - to +, points down.
+    let dipole = &rows[3][column("dipole_z_D")];
+    assert!(dipole.starts_with('-') && dipole.contains(','), "numbers stay numbers: {dipole}");
     let charge = &rows[3][column("strongest_bond_charge_e")];
-    assert!(charge.starts_with("-0,"), "numbers stay numbers: {charge}");
+    assert!(charge.starts_with("0,"), "fluorine has drawn charge along the bond: {charge}");
 
     let mut bytes = Vec::new();
     write_json_lines(&table, &mut bytes).unwrap();

@@ -93,7 +93,7 @@ fn far_from_the_origin() {
     let a = dipole_of_charges(&q, None, &near, None).unwrap().vector;
     let b = dipole_of_charges(&q, None, &far, None).unwrap().vector;
     let z = [8, 1, 1];
-    let charges = Charges { charge: q.to_vec(), u: None };
+    let charges = Charges { charge: q.to_vec(), u: None, along_bond: None };
     let c = dipole(Molecule { atomic_number: &z, formal_charge: None, xyz: &far }, &charges, 0.0).unwrap().vector;
     for k in 0..3 {
         assert!((a[k] - b[k]).abs() < 1e-14 && (a[k] - c[k]).abs() < 1e-14);
@@ -103,7 +103,7 @@ fn far_from_the_origin() {
 /// Charges of two atoms known to sum to zero: u(q) of each is u/√2, both of one mind: u(μ) = k d u/√2, about any origin.
 #[test]
 fn charges_are_conditioned_on_the_net_charge() {
-    let charges = Charges { charge: vec![0.4, -0.4], u: Some(vec![0.02, 0.02]) };
+    let charges = Charges { charge: vec![0.4, -0.4], u: Some(vec![0.02, 0.02]), along_bond: None };
     for shift in [0.0, 1e3] {
         let xyz = [[shift, 0.0, 0.0], [shift, 0.0, 1.25]];
         let molecule = Molecule { atomic_number: &[1, 9], formal_charge: None, xyz: &xyz };
@@ -132,7 +132,7 @@ fn charges_are_conditioned_on_the_net_charge() {
 fn ions_are_taken_about_the_centre_of_mass() {
     let xyz = [[5.0, 0.0, 0.0], [5.0, 0.0, 0.97]];
     let molecule = Molecule { atomic_number: &[8, 1], formal_charge: Some(&[-1, 0]), xyz: &xyz };
-    let charges = Charges { charge: vec![-1.0, 0.0], u: None };
+    let charges = Charges { charge: vec![-1.0, 0.0], u: None, along_bond: None };
     let found = dipole(molecule, &charges, 0.0).unwrap();
     let part = 1.00782503190 / (15.99491461926 + 1.00782503190);
     assert!(found.charged);
@@ -148,9 +148,9 @@ proptest! {
     fn no_frame_is_preferred(seed in 1_u64..u64::MAX) {
         let mut random = Random(seed);
         let found = structure("acetic_acid");
-        let charge = peoe_charges(found.molecule(), &found.bonding).unwrap();
+        let charge = peoe_charges(found.molecule(), &found.bonding).unwrap().charge;
         let u: Vec<f64> = charge.iter().map(|_| 0.05 * random.unit()).collect();
-        let before = dipole(found.molecule(), &Charges { charge: charge.clone(), u: Some(u.clone()) }, 0.01).unwrap();
+        let before = dipole(found.molecule(), &Charges { charge: charge.clone(), u: Some(u.clone()), along_bond: None }, 0.01).unwrap();
         let (m, shift) = (random.rotation(), random.vector());
         let order = random.permutation(charge.len());
         let moved = |p| { let q = turned(&m, p); [0, 1, 2].map(|k| q[k] + 10.0 * shift[k]) };
@@ -159,6 +159,7 @@ proptest! {
         let charges = Charges {
             charge: order.iter().map(|&i| charge[i]).collect(),
             u: Some(order.iter().map(|&i| u[i]).collect()),
+            along_bond: None,
         };
         let after = dipole(Molecule { atomic_number: &z, formal_charge: None, xyz: &xyz }, &charges, 0.01).unwrap();
         let expected = turned(&m, before.vector);

@@ -7,7 +7,7 @@ use bondmoment::moments::{Flexibility, dipole, greatest_dipole, may_change_by_tu
 use proptest::prelude::*;
 
 fn peoe(found: &Structure) -> Charges {
-    Charges { charge: peoe_charges(found.molecule(), &found.bonding).unwrap(), u: None }
+    peoe_charges(found.molecule(), &found.bonding).unwrap()
 }
 
 fn bound(name: &str) -> Flexibility {
@@ -124,7 +124,7 @@ fn what_is_a_hinge() {
         let bonds = pairs.iter().map(|&(a, b, order)| Bond { a, b, order }).collect();
         let bonding = Bonding { bonds, ..Bonding::default() };
         let molecule = Molecule { atomic_number: z, formal_charge: None, xyz: &xyz };
-        greatest_dipole(molecule, &bonding, &Charges { charge: vec![0.0; z.len()], u: None }).unwrap().hinges
+        greatest_dipole(molecule, &bonding, &Charges { charge: vec![0.0; z.len()], u: None, along_bond: None }).unwrap().hinges
     };
     // N-methylformamide without hydrogens on carbon: O=C-N(H)-C-H: only N-CH turns.
     let amide = [(0, 1, 2.0), (1, 2, 1.0), (2, 3, 1.0), (2, 4, 1.0), (4, 5, 1.0)];
@@ -187,7 +187,7 @@ proptest! {
         ] {
             let found = structure(name);
             let n = found.xyz.len();
-            let charges = Charges { charge: random_charges(&mut random, n), u: None };
+            let charges = Charges { charge: random_charges(&mut random, n), u: None, along_bond: None };
             let result = greatest_dipole(found.molecule(), &found.bonding, &charges).unwrap();
             for _ in 0..20 {
                 let mut xyz = found.xyz.clone();
@@ -205,7 +205,7 @@ proptest! {
     fn nitrogen_inversion_never_passes_the_bound(seed in 1_u64..u64::MAX) {
         let mut random = Random(seed);
         let found = structure("methylamine");
-        let charges = Charges { charge: random_charges(&mut random, 7), u: None };
+        let charges = Charges { charge: random_charges(&mut random, 7), u: None, along_bond: None };
         let result = greatest_dipole(found.molecule(), &found.bonding, &charges).unwrap();
         prop_assert_eq!(result.hinges, 1);
         let mut xyz = found.xyz.clone();
@@ -224,7 +224,7 @@ proptest! {
     fn ring_inversion_never_passes_the_bound(seed in 1_u64..u64::MAX) {
         let mut random = Random(seed);
         let found = structure("cyclohexane");
-        let charges = Charges { charge: random_charges(&mut random, 18), u: None };
+        let charges = Charges { charge: random_charges(&mut random, 18), u: None, along_bond: None };
         let result = greatest_dipole(found.molecule(), &found.bonding, &charges).unwrap();
         let mut other: Vec<[f64; 3]> = found.xyz.iter().map(|p| [p[0], p[1], -p[2]]).collect();
         for carbon in 0..6 {

@@ -52,9 +52,9 @@ proptest! {
             let sum: f64 = charge.iter().sum();
             charge.iter_mut().take(1).for_each(|q| *q -= sum);
             let molecule = Molecule { atomic_number: &z, formal_charge: None, xyz: &xyz };
-            all(molecule, &bonding, &Charges { charge: charge.clone(), u: Some(vec![pick(&[0.0, 0.1, f64::NAN]); atoms]) });
-            all(molecule, &bonding, &Charges { charge: vec![pick(&[f64::NAN, 1e308, 1.0]); atoms], u: None });
-            all(molecule, &bonding, &Charges { charge: charge[..atoms / 2].to_vec(), u: None });
+            all(molecule, &bonding, &Charges { charge: charge.clone(), u: Some(vec![pick(&[0.0, 0.1, f64::NAN]); atoms]), along_bond: None });
+            all(molecule, &bonding, &Charges { charge: vec![pick(&[f64::NAN, 1e308, 1.0]); atoms], u: None, along_bond: None });
+            all(molecule, &bonding, &Charges { charge: charge[..atoms / 2].to_vec(), u: None, along_bond: None });
         });
     }
 }
@@ -68,7 +68,7 @@ fn long_chains_and_rings_need_no_stack() {
         let xyz: Vec<[f64; 3]> = (0..n).map(|i| [1.5 * f64::from(i), f64::from(i % 3), f64::from(i % 2)]).collect();
         let molecule = Molecule { atomic_number: &z, formal_charge: None, xyz: &xyz };
         let mut bonds: Vec<Bond> = (1..n).map(|i| Bond { a: i - 1, b: i, order: 1.0 }).collect();
-        let charges = Charges { charge: vec![0.0; n as usize], u: None };
+        let charges = Charges { charge: vec![0.0; n as usize], u: None, along_bond: None };
         all(molecule, &Bonding { bonds: bonds.clone(), ..Bonding::default() }, &charges);
         bonds.push(Bond { a: 0, b: n - 1, order: 1.0 });
         all(molecule, &Bonding { bonds, ..Bonding::default() }, &charges);

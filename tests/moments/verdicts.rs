@@ -8,7 +8,7 @@ use bondmoment::status::{Code, Failure, remark};
 use proptest::prelude::*;
 
 fn judge(found: &Structure) -> Result<Verdict, Failure> {
-    let charges = peoe_charges(found.molecule(), &found.bonding).map(|charge| Charges { charge, u: None });
+    let charges = peoe_charges(found.molecule(), &found.bonding);
     let charges = charges.as_ref().map_err(|failure| *failure);
     verdict(found.molecule(), &found.bonding, charges, 0.0, 0.2, PEOE_RMS_D)
 }
@@ -78,8 +78,8 @@ fn polar_undecided_charged() {
     assert_eq!((acetate.polarity, acetate.remarks), (POLARITY_CHARGED, remark::CHARGED));
     // Charges with an uncertainty of their own decide by it.
     let found = structure("propane");
-    let charge = peoe_charges(found.molecule(), &found.bonding).unwrap();
-    let charges = Charges { u: Some(vec![0.002; charge.len()]), charge };
+    let charge = peoe_charges(found.molecule(), &found.bonding).unwrap().charge;
+    let charges = Charges { u: Some(vec![0.002; charge.len()]), charge, along_bond: None };
     let sharp = verdict(found.molecule(), &found.bonding, Ok(&charges), 0.001, 0.2, f64::NAN).unwrap();
     assert_eq!((sharp.polarity, sharp.by_rms), (POLARITY_NON_POLAR, false));
     // Without one, and without the rms of a model, there is no verdict.

@@ -134,7 +134,10 @@ fn neutral_radical(molecule: Molecule<'_>, around: &Neighbours, charge: &mut [i3
         let middle = (0..3).find(|&atom| around.degree(atom) == 2).unwrap_or(0);
         if let [(one, _), (other, _)] = *around.of(middle) {
             let ends = [one, other].iter().filter(|&&end| molecule.atomic_number[end as usize] == 8).count();
-            if molecule.atomic_number[middle] == 7 && ends == 2 && cosine(molecule.xyz, middle, one, other) > RADICAL_COSINE {
+            if molecule.atomic_number[middle] == 7
+                && ends == 2
+                && cosine(molecule.xyz, middle, one, other) > RADICAL_COSINE
+            {
                 return;
             }
             // Trihalides and the bihalides of hydrogen are ions for certain.

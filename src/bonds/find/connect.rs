@@ -45,7 +45,13 @@ fn tolerance(a: i32, b: i32) -> Option<f64> {
         (_, NobleGas) => return tolerance(b, a),
         (Hydrogen, Hydrogen) => 0.38,
         (SBlock, Hydrogen) | (Hydrogen, SBlock) => 0.20,
-        (Hydrogen, _) | (_, Hydrogen) => if is_electron_poor(a) || is_electron_poor(b) { 0.42 } else { 0.35 },
+        (Hydrogen, _) | (_, Hydrogen) => {
+            if is_electron_poor(a) || is_electron_poor(b) {
+                0.42
+            } else {
+                0.35
+            }
+        }
         (SBlock, SBlock) => 0.30,
         (SBlock, _) if b == 6 => 0.15,
         (_, SBlock) if a == 6 => 0.15,
@@ -74,11 +80,9 @@ pub(super) fn connect(molecule: Molecule<'_>) -> Result<(Vec<Bond>, u64), Failur
         }
         let widest = sum + LARGEST_TOLERANCE;
         if squared <= widest * widest {
-            if let Some(tolerance) = tolerance(z[a as usize], z[b as usize]) {
-                let length = squared.sqrt();
-                if length <= sum + tolerance {
-                    near.push(Near { a, b, ratio: length / sum, kept: true });
-                }
+            let length = squared.sqrt();
+            if tolerance(z[a as usize], z[b as usize]).is_some_and(|tolerance| length <= sum + tolerance) {
+                near.push(Near { a, b, ratio: length / sum, kept: true });
             }
         }
         true
@@ -134,17 +138,27 @@ fn hydrogens(z: &[i32], near: &mut Vec<Near>) {
 fn shared_sides(z: &[i32], near: &mut Vec<Near>) {
     let around = neighbours(z.len(), near);
     let mut gone = Vec::new();
+    // Of every atom: the atom whose partner it was seen as last (one up, so that 0 is nobody), and by which pair.
+    let mut seen = vec![(0_u32, 0_u32); z.len()];
     for (k, pair) in near.iter().enumerate() {
         let (za, zb) = (z[pair.a as usize], z[pair.b as usize]);
-        if za == 1 || zb == 1 {
+        let (poor_a, poor_b) = (is_electron_poor(za), is_electron_poor(zb));
+        let halogens = kind(za) == Kind::Halogen && kind(zb) == Kind::Halogen;
+        if za == 1 || zb == 1 || (pair.ratio < 1.0 && !(poor_a && poor_b) && !halogens) {
             continue;
         }
-        let (poor_a, poor_b) = (is_electron_poor(za), is_electron_poor(zb));
+        let mark = pair.a + 1;
+        if around.of(pair.a as usize).iter().any(|&(other, _)| seen[other as usize].0 != mark) {
+            for &(other, k) in around.of(pair.a as usize) {
+                seen[other as usize] = (mark, k);
+            }
+        }
         let (mut bridges, mut hydrogen_bridges, mut shorter) = (0, 0, 0);
-        for &(middle, first) in around.of(pair.a as usize) {
-            let Some(&(_, second)) = around.of(middle as usize).iter().find(|&&(other, _)| other == pair.b) else {
+        for &(middle, second) in around.of(pair.b as usize) {
+            let (of, first) = seen[middle as usize];
+            if of != mark {
                 continue;
-            };
+            }
             let zm = z[middle as usize];
             let longest = near[first as usize].ratio.max(near[second as usize].ratio);
             bridges += i32::from(!is_metallic(zm));
@@ -163,14 +177,13 @@ fn shared_sides(z: &[i32], near: &mut Vec<Near>) {
                 && pair.ratio >= 1.0
                 && pair.ratio >= longest + CHELATE_MARGIN;
             // Two halogen atoms on one atom crowd each other; a three-ring with two of them is unknown.
-            let crowded = kind(za) == Kind::Halogen && kind(zb) == Kind::Halogen && pair.ratio > longest;
+            let crowded = halogens && pair.ratio > longest;
             if triangle || chelate || crowded {
                 gone.push(k);
             }
         }
         let poor_main = |z: i32| is_electron_poor(z) && kind(z) != Kind::Transition;
-        let has_ligand =
-            |atom: u32| around.of(atom as usize).iter().any(|&(other, _)| !is_metallic(z[other as usize]));
+        let has_ligand = |atom: u32| around.of(atom as usize).iter().any(|&(other, _)| !is_metallic(z[other as usize]));
         let salt = (kind(za) == Kind::SBlock && is_metallic(zb)) || (kind(zb) == Kind::SBlock && is_metallic(za));
         let both_poor = poor_main(za) && poor_main(zb);
         if (both_poor && hydrogen_bridges >= 2)

@@ -38,9 +38,7 @@ pub(super) fn for_pairs_within(xyz: &[[f64; 3]], reach: f64, mut visit: impl FnM
         let end = first + order[first..].iter().take_while(|entry| entry.0 == cell).count();
         for ((dx, dy), finger) in ROWS.into_iter().zip(&mut fingers) {
             let own = (dx, dy) == (0, 0);
-            let (Ok(x), Ok(y)) =
-                (u32::try_from(i64::from(cell.0) + dx), u32::try_from(i64::from(cell.1) + dy))
-            else {
+            let (Ok(x), Ok(y)) = (u32::try_from(i64::from(cell.0) + dx), u32::try_from(i64::from(cell.1) + dy)) else {
                 continue;
             };
             let from = if own { cell } else { (x, y, cell.2.saturating_sub(1)) };

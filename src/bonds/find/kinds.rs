@@ -28,8 +28,20 @@ pub(super) fn group(z: i32) -> i32 {
     let (first, last) = (NOBLE[shell], NOBLE[shell + 1]);
     let (from_left, from_right) = (z - first, last - z);
     match shell {
-        0 => if z == 1 { 1 } else { 18 },
-        1 | 2 => if from_left <= 2 { from_left } else { 18 - from_right },
+        0 => {
+            if z == 1 {
+                1
+            } else {
+                18
+            }
+        }
+        1 | 2 => {
+            if from_left <= 2 {
+                from_left
+            } else {
+                18 - from_right
+            }
+        }
         3 | 4 => from_left,
         _ if from_left <= 2 => from_left,
         _ if from_left <= 16 => 0,
@@ -64,7 +76,13 @@ pub(super) fn is_electron_poor(z: i32) -> bool {
 pub(super) fn valence_electrons(z: i32) -> i32 {
     match (kind(z), group(z)) {
         (Kind::Transition, _) => 0,
-        (Kind::NobleGas, _) => if z == 2 { 2 } else { 8 },
+        (Kind::NobleGas, _) => {
+            if z == 2 {
+                2
+            } else {
+                8
+            }
+        }
         (_, 12) => 2,
         (_, g @ 13..=17) => g - 10,
         (_, g) => g,
@@ -74,7 +92,13 @@ pub(super) fn valence_electrons(z: i32) -> i32 {
 /// Valence without charge and without expansion: H 1, C 4, N 3, O 2, F 1, Na 1, Mg 2, Al 3.
 pub(super) fn ordinary_valence(z: i32) -> i32 {
     match valence_electrons(z) {
-        e @ 0..=4 => if kind(z) == Kind::NobleGas { 0 } else { e },
+        e @ 0..=4 => {
+            if kind(z) == Kind::NobleGas {
+                0
+            } else {
+                e
+            }
+        }
         e => 8 - e,
     }
 }
@@ -121,9 +145,34 @@ mod tests {
     #[test]
     fn groups_of_the_periodic_table() {
         for (z, expected) in [
-            (1, 1), (2, 18), (3, 1), (4, 2), (5, 13), (9, 17), (12, 2), (13, 13), (19, 1), (21, 3), (26, 8), (30, 12),
-            (31, 13), (35, 17), (47, 11), (54, 18), (56, 2), (57, 0), (70, 0), (71, 3), (72, 4), (80, 12), (82, 14),
-            (86, 18), (92, 0), (103, 3), (117, 17), (118, 18),
+            (1, 1),
+            (2, 18),
+            (3, 1),
+            (4, 2),
+            (5, 13),
+            (9, 17),
+            (12, 2),
+            (13, 13),
+            (19, 1),
+            (21, 3),
+            (26, 8),
+            (30, 12),
+            (31, 13),
+            (35, 17),
+            (47, 11),
+            (54, 18),
+            (56, 2),
+            (57, 0),
+            (70, 0),
+            (71, 3),
+            (72, 4),
+            (80, 12),
+            (82, 14),
+            (86, 18),
+            (92, 0),
+            (103, 3),
+            (117, 17),
+            (118, 18),
         ] {
             assert_eq!(group(z), expected, "element {z}");
         }

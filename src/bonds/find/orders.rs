@@ -112,12 +112,7 @@ fn without_order(z: &[i32], bonds: &[Bond], around: &Neighbours) -> Vec<bool> {
 }
 
 /// The surroundings of every atom. Without rings the coordinates are not looked at (they may be a flat drawing).
-pub(super) fn shapes(
-    molecule: Molecule<'_>,
-    bonds: &[Bond],
-    around: &Neighbours,
-    rings: Option<&Rings>,
-) -> Vec<Shape> {
+pub(super) fn shapes(molecule: Molecule<'_>, bonds: &[Bond], around: &Neighbours, rings: Option<&Rings>) -> Vec<Shape> {
     let z = molecule.atomic_number;
     let crowded_boron = |atom: u32| z[atom as usize] == 5 && around.degree(atom as usize) > 4;
     let mut shapes: Vec<Shape> = (0..z.len())
@@ -179,7 +174,13 @@ fn look(molecule: Molecule<'_>, atom: usize, partners: &[u32], shape: &mut Shape
             let cosine = dot(unit(one), unit(other));
             shape.linear = cosine < -0.866;
             // An angle below 115° belongs to a lone pair.
-            shape.trivalent_charge = if shape.linear { 1 } else if cosine > -0.42 { -1 } else { 0 };
+            shape.trivalent_charge = if shape.linear {
+                1
+            } else if cosine > -0.42 {
+                -1
+            } else {
+                0
+            };
         }
         [one, two, three] => {
             let (u, v, w) = (unit(one), unit(two), unit(three));
@@ -231,6 +232,9 @@ pub(super) fn distribute(
             (*charge, *cost) = charge_and_cost(z[atom], &shapes[atom], base as i32 + pi as i32);
             if geometry {
                 *cost += angle_cost(z[atom], &shapes[atom], pi);
+            } else if pi > 1 {
+                // One double bond an atom, even where missing hydrogens leave room for two.
+                *cost = FORBIDDEN;
             } else if pi == 0 && z[atom] == 6 {
                 *cost += AROMATIC_CARBON;
             }
@@ -245,7 +249,8 @@ pub(super) fn distribute(
         for (atom, &of) in fragment.iter().enumerate().filter(|&(atom, _)| costs(atom, bonds).is_none()) {
             let valence: f64 = around.of(atom).iter().map(|&(_, k)| bonds[k as usize].order).sum();
             let alone = around.degree(atom) == 0 || z[atom] == 1;
-            net[of as usize] += if alone { 0 } else { i64::from(charge_and_cost(z[atom], &shapes[atom], valence as i32).0) };
+            net[of as usize] +=
+                if alone { 0 } else { i64::from(charge_and_cost(z[atom], &shapes[atom], valence as i32).0) };
         }
         (fragment, net)
     };

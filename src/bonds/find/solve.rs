@@ -43,6 +43,12 @@ struct State {
     choice: u64,
 }
 
+/// What is kept of taking in one atom: its bonds to the front, and of every memory its origin and choice.
+struct Step {
+    bonds: Vec<usize>,
+    states: Vec<(u32, u64)>,
+}
+
 impl Part {
     /// Neighbours of each atom as (atom, bond).
     pub(super) fn neighbours(&self) -> Vec<Vec<(usize, usize)>> {
@@ -112,7 +118,7 @@ impl Part {
         let mut left: Vec<usize> = around.iter().map(Vec::len).collect();
         let mut used = [false; SLOTS];
         let mut states = vec![State { key: 0, cost: 0, from: 0, choice: 0 }];
-        let mut history: Vec<(Vec<usize>, Vec<(u32, u64)>)> = Vec::with_capacity(order.len());
+        let mut history: Vec<Step> = Vec::with_capacity(order.len());
         let mut next = Vec::new();
         let mut work = 0;
         for atom in order {
@@ -165,13 +171,13 @@ impl Part {
             if states.len() > MOST_STATES {
                 return None;
             }
-            history.push((back, states.iter().map(|state| (state.from, state.choice)).collect()));
+            history.push(Step { bonds: back, states: states.iter().map(|state| (state.from, state.choice)).collect() });
         }
         let mut at = 0;
         let mut increments = vec![0_u8; self.bonds.len()];
-        for (back, steps) in history.iter().rev() {
-            let &(from, choice) = steps.get(at)?;
-            for (place, &k) in back.iter().enumerate() {
+        for step in history.iter().rev() {
+            let &(from, choice) = step.states.get(at)?;
+            for (place, &k) in step.bonds.iter().enumerate() {
                 increments[k] = (choice >> (2 * place.min(31)) & 3) as u8;
             }
             at = from as usize;

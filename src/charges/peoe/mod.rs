@@ -20,6 +20,7 @@ mod types;
 pub use parameters::Parameters;
 pub use types::AtomType;
 
+use super::Charges;
 use crate::molecule::{Bonding, Molecule};
 use crate::status::{Code, Failure};
 use types::Start;
@@ -27,7 +28,8 @@ use types::Start;
 /// Number of sweeps, as published.
 const SWEEPS: usize = 6;
 
-/// PEOE charges [e], one an atom; they sum to the net formal charge and do not depend on the coordinates.
+/// PEOE charges [e], one an atom, without uncertainties; they sum to the net formal charge and do not depend on the
+/// coordinates. `along_bond` holds the sum of the six flows along each bond.
 ///
 /// The sweeps start from the formal charges of the bonding (or, if it carries none, of the molecule), the delocalised
 /// ones shared first: see [`AtomType`] for the types and the sharing.
@@ -35,15 +37,16 @@ const SWEEPS: usize = 6;
 /// # Errors
 /// As [`Molecule::check`] · `BadBond` with the bond as item · `NoData` with the atom as item, where the model has no type
 /// for it: other elements, sulfur with double bonds, hypervalent halogens, bonds without an order.
-pub fn peoe_charges(molecule: Molecule<'_>, bonding: &Bonding) -> Result<Vec<f64>, Failure> {
+pub fn peoe_charges(molecule: Molecule<'_>, bonding: &Bonding) -> Result<Charges, Failure> {
     molecule.check()?;
-    let Start { types, charge: mut charges } = types::start(molecule, bonding)?;
+    let Start { types, mut charge } = types::start(molecule, bonding)?;
     let parameters: Vec<Parameters> = types.iter().map(|&kind| parameters::of(kind)).collect::<Result<_, _>>()?;
     let mut damping = 1.0;
-    let mut flow = vec![0.0; charges.len()];
+    let mut flow = vec![0.0; charge.len()];
+    let mut along_bond = vec![0.0; bonding.bonds.len()];
     for _ in 0..SWEEPS {
         damping *= 0.5;
-        let chi: Vec<f64> = parameters.iter().zip(&charges).map(|(own, &q)| own.a + q * (own.b + q * own.c)).collect();
+        let chi: Vec<f64> = parameters.iter().zip(&charge).map(|(own, &q)| own.a + q * (own.b + q * own.c)).collect();
         flow.fill(0.0);
         for (index, bond) in bonding.bonds.iter().enumerate() {
             let (i, j) = (bond.a as usize, bond.b as usize);
@@ -56,12 +59,13 @@ pub fn peoe_charges(molecule: Molecule<'_>, bonding: &Bonding) -> Result<Vec<f64
             let moved = (chi_j - chi_i) / cation * damping;
             add(&mut flow, i, moved);
             add(&mut flow, j, -moved);
+            add(&mut along_bond, index, moved);
         }
-        for (charge, moved) in charges.iter_mut().zip(&flow) {
-            *charge += moved;
+        for (own, moved) in charge.iter_mut().zip(&flow) {
+            *own += moved;
         }
     }
-    Ok(charges)
+    Ok(Charges { charge, u: None, along_bond: Some(along_bond) })
 }
 
 fn add(values: &mut [f64], index: usize, amount: f64) {

@@ -17,6 +17,9 @@ macro_rules! atom_types {
         ///   (or C-bound S) on one centre, of which one has a double bond to the centre, where the others carry −1
         ///   (carboxylate, nitro, nitrate, carbonate: −1/2 or −2/3 each) or where the one with the double bond
         ///   carries +1 and the others have a lone pair (amidinium, guanidinium, imidazolium about its C2).
+        /// - Opposite formal charges on bonded atoms (nitro, N-oxide, azide, isocyanide, carbon monoxide) are a way of
+        ///   writing the bond and cancel before the first sweep: the σ scheme starts neutral groups from zero. What
+        ///   remains, as the −1/3 of each nitrate oxygen, is the net charge of the group.
         #[derive(Clone, Copy, Debug, PartialEq, Eq)]
         pub enum AtomType { $($(#[doc = $doc])* $kind,)* }
 
@@ -109,6 +112,7 @@ pub(super) fn start(molecule: Molecule<'_>, bonding: &Bonding) -> Result<Start, 
     }
     let mut charge: Vec<f64> = formal.iter().map(|&q| f64::from(q)).collect();
     share(molecule, bonding, &around, &formal, &mut types, &mut charge);
+    cancel(molecule, bonding, &mut charge);
     Ok(Start { types, charge })
 }
 
@@ -189,6 +193,36 @@ fn share(
                     (*own, *q, *taken) = (like, each, true);
                 }
             }
+        }
+    }
+}
+
+/// Cancels opposite charges of bonded atoms: a positive atom against all its negative neighbours in proportion, so that
+/// equivalent neighbours stay alike.
+fn cancel(molecule: Molecule<'_>, bonding: &Bonding, charge: &mut [f64]) {
+    if charge.iter().all(|&q| q <= 0.0) {
+        return;
+    }
+    let neighbours = Neighbours::new(molecule.len(), &bonding.bonds);
+    for centre in 0..charge.len() {
+        let own = charge.get(centre).copied().unwrap_or(0.0);
+        if own <= 0.0 {
+            continue;
+        }
+        let around = neighbours.of(centre);
+        let negative = |charge: &[f64], atom: u32| charge.get(atom as usize).copied().unwrap_or(0.0).min(0.0);
+        let against: f64 = around.iter().map(|&(atom, _)| negative(charge, atom)).sum();
+        if against == 0.0 {
+            continue;
+        }
+        let rest = (1.0 + own / against).max(0.0);
+        for &(atom, _) in around {
+            if let Some(q) = charge.get_mut(atom as usize).filter(|q| **q < 0.0) {
+                *q *= rest;
+            }
+        }
+        if let Some(q) = charge.get_mut(centre) {
+            *q = (own + against).max(0.0);
         }
     }
 }
