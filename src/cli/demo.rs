@@ -58,7 +58,6 @@ fn explain(out: &mut impl Write, table: &Table) -> Result<(), Trouble> {
     };
     let (polarity, status, detail) = (texts("polarity")?, texts("status")?, texts("detail")?);
     let by_symmetry = detail.iter().filter(|text| text.contains("by symmetry")).count();
-    let one_conformer = detail.iter().filter(|text| text.contains("one conformer")).count();
     let failed = status.iter().filter(|text| *text != "OK").count();
     let count = |verdict: &str| polarity.iter().filter(|text| *text == verdict).count();
     writeln!(
@@ -67,8 +66,8 @@ fn explain(out: &mut impl Write, table: &Table) -> Result<(), Trouble> {
          - {} rows: {} polar, {} non-polar, {} undecided, {} charged, {failed} without a dipole, each with its reason.\n\
          - Polar bonds do not make a polar molecule: {by_symmetry} rows are without a dipole by symmetry, tetrachloromethane\n  \
            and p-dichlorobenzene among them, whatever the charges.\n\
-         - One conformer is not the molecule: {one_conformer} rows are undecided or marked for that, 1,2-dichloroethane (anti)\n  \
-           among them; hexane and cyclohexane turn too, and stay non-polar.\n\
+         - One conformer is not the molecule: anti-1,2-dichloroethane has no dipole by symmetry, yet turning about its C-C bond\n  \
+           makes one, so it is undecided; hexane and cyclohexane turn too, and stay non-polar.\n\
          - The arrow of a dipole points from - to +; \"- end\" names the negative end of the strongest bond.\n\
          - PEOE misses measured dipoles by {PEOE_RMS_D} D (rms) and says nothing of pi bonds: nitrobenzene, measured at 4.2 D, comes\n  \
            out far too small. A verdict counts that in.\n\

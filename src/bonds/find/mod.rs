@@ -73,6 +73,16 @@ pub static FIND_BONDS: Function = Function {
             help: "Bond length [Å]",
             ..NUMBER
         },
+        Argument {
+            number: 6,
+            name: "found_formal_charge",
+            label: "formal charge",
+            shape: "atom",
+            unit: "e",
+            required: false,
+            help: "Formal charge of each atom [e], as stated or derived",
+            ..INTEGER
+        },
     ],
     statuses: &[
         Code::Missing,
