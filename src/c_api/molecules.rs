@@ -137,6 +137,10 @@ impl Bonds {
     pub(super) fn new(arrays: &mut Arrays, argument: i32, rows: usize, from: &BondArrays) -> Result<Self, Failure> {
         let bonds = count(from.n_bonds).map_err(|failure| failure.argument(argument))?;
         if from.bond_offsets.is_null() {
+            // Bonds without their offsets are a slip, not a wish to have them found.
+            if !from.bond_atoms.is_null() || bonds > 0 {
+                return Err(Failure::of(Code::NullPointer, argument));
+            }
             return Ok(Self { argument, arrays: None, bonds: 0 });
         }
         let offsets = arrays.input(argument, from.bond_offsets, if rows == 0 { 0 } else { rows + 1 })?;
