@@ -18,7 +18,8 @@ mod status;
 const ABI_VERSION: i32 = 1;
 
 /// The entry points, in the order of the header.
-const SOURCES: &[&str] = &["about", "elements", "bonds", "charges", "moments", "settings", "library", "tabulation", "table"];
+const SOURCES: &[&str] =
+    &["about", "elements", "bonds", "charges", "moments", "settings", "library", "tabulation", "table"];
 
 fn main() {
     println!("cargo::rerun-if-changed=build.rs");
@@ -42,7 +43,8 @@ fn main() {
     }
 
     let mut config = cbindgen::Config::from_file(Path::new(&root).join("cbindgen.toml")).expect("cbindgen.toml");
-    config.header = Some(fs::read_to_string(Path::new(&root).join("src/c_api/header.txt")).expect("src/c_api/header.txt"));
+    config.header =
+        Some(fs::read_to_string(Path::new(&root).join("src/c_api/header.txt")).expect("src/c_api/header.txt"));
     config.after_includes = Some(constants(&root));
     let mut builder = cbindgen::Builder::new().with_config(config);
     for source in SOURCES {

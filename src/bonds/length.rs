@@ -157,7 +157,11 @@ pub fn bond_length(
     let out_of_range = Err(Failure::of(Code::OutOfRange, 8));
     match law {
         selectors::LENGTH_RADIUS_SUM => {
-            if order == order_of(radii) { sum(radii) } else { out_of_range }
+            if order == order_of(radii) {
+                sum(radii)
+            } else {
+                out_of_range
+            }
         }
         selectors::LENGTH_BY_ORDER => {
             single_bond_radii(radii)?;

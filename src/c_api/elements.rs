@@ -98,12 +98,8 @@ pub unsafe extern "C" fn bmom_symbol_column(
         let atomic_number = atomic_number.slice();
         let mut all = String::new();
         offsets.set(0, 0);
-        let code = run_rows(
-            n,
-            status,
-            |i| elements::symbol(atomic_number[i]).map(|symbol| all.push_str(symbol)),
-            |_| {},
-        )?;
+        let code =
+            run_rows(n, status, |i| elements::symbol(atomic_number[i]).map(|symbol| all.push_str(symbol)), |_| {})?;
         let mut end = 0;
         for (i, &z) in atomic_number.iter().enumerate() {
             end += elements::symbol(z).map_or(0, str::len) as i64;
@@ -214,7 +210,12 @@ pub unsafe extern "C" fn bmom_covalent_radius_column(
 /// Reference: Bondi, J. Phys. Chem. 1964, 68, 441; Rowland and Taylor, J. Phys. Chem. 1996, 100, 7384; Mantina et al.,
 /// J. Phys. Chem. A 2009, 113, 5806; Alvarez, Dalton Trans. 2013, 42, 8617; Vogt and Alvarez, Inorg. Chem. 2014, 53, 9260.
 #[unsafe(no_mangle)]
-pub unsafe extern "C" fn bmom_vdw_radius(table: i32, atomic_number: i32, radius_A: *mut f64, u_radius_A: *mut f64) -> i32 {
+pub unsafe extern "C" fn bmom_vdw_radius(
+    table: i32,
+    atomic_number: i32,
+    radius_A: *mut f64,
+    u_radius_A: *mut f64,
+) -> i32 {
     // SAFETY: the caller's promise goes on.
     unsafe { one(|t, z, _| elements::vdw_radius(t, z), table, atomic_number, 0, 3, radius_A, u_radius_A) }
 }
@@ -336,7 +337,12 @@ pub unsafe extern "C" fn bmom_polarizability_column(
 /// Given: 1 shell (from 1); 2 nuclear_charge (from 1). Returned: 3 radius_A, u_radius_A [A].
 /// Status: MISSING, OUT_OF_RANGE, NULL_POINTER. Reference: N. Bohr, Phil. Mag. 1913, 26, 1; CODATA 2022.
 #[unsafe(no_mangle)]
-pub unsafe extern "C" fn bmom_bohr_radius(shell: i32, nuclear_charge: i32, radius_A: *mut f64, u_radius_A: *mut f64) -> i32 {
+pub unsafe extern "C" fn bmom_bohr_radius(
+    shell: i32,
+    nuclear_charge: i32,
+    radius_A: *mut f64,
+    u_radius_A: *mut f64,
+) -> i32 {
     guard(|| {
         // SAFETY: the caller's promise about every pointer, stated in the header.
         let out = unsafe { Arrays::promised() }.quantity_cell(3, radius_A, u_radius_A)?;

@@ -154,7 +154,9 @@ impl Bonds {
     /// # Errors
     /// `BadOffsets` of the argument.
     pub(super) fn view<'a>(&self) -> Result<BondView<'a>, Failure> {
-        let Some((offsets, atoms, order)) = self.arrays else { return Ok(BondView { argument: self.argument, given: None }) };
+        let Some((offsets, atoms, order)) = self.arrays else {
+            return Ok(BondView { argument: self.argument, given: None });
+        };
         let offsets = checked_offsets(offsets.slice(), self.bonds, self.argument)?;
         Ok(BondView { argument: self.argument, given: Some((offsets, atoms.slice(), order.slice())) })
     }

@@ -90,7 +90,10 @@ pub unsafe extern "C" fn bmom_dipole_column(
                 Ok((dipole, remarks, item)) => (dipole, Ok((remarks, item))),
                 Err(failure) => {
                     failed += 1;
-                    (Dipole { magnitude: NO_QUANTITY, ..Dipole::new([NAN; 3], [[NAN; 3]; 3], [NAN; 3], false) }, Err(failure))
+                    (
+                        Dipole { magnitude: NO_QUANTITY, ..Dipole::new([NAN; 3], [[NAN; 3]; 3], [NAN; 3], false) },
+                        Err(failure),
+                    )
                 }
             };
             set_numbers(Some(vector_out), 3 * row, &dipole.vector);

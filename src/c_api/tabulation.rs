@@ -108,9 +108,8 @@ pub unsafe extern "C" fn bmom_tabulation_next(
         let most = usize::try_from(max_molecules).unwrap_or(usize::MAX);
         // SAFETY: as above.
         let (run, stop) = unsafe { (run_of(tabulation)?, stop_of(stop)?) };
-        let batch = run.alone(|tabulation| {
-            tabulation.next_batch(most, out.wanted(), run.threads, stop.unwrap_or(&NEVER))
-        })?;
+        let batch =
+            run.alone(|tabulation| tabulation.next_batch(most, out.wanted(), run.threads, stop.unwrap_or(&NEVER)))?;
         match batch.map_err(|problem| failure_of(&problem))? {
             Some(tables) => out.set(tables),
             None => return Ok(Code::End),

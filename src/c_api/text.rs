@@ -49,7 +49,11 @@ pub(super) unsafe fn text_in<'a>(argument: i32, pointer: *const c_char, length: 
 ///
 /// # Safety
 /// As `bytes_in`.
-pub(super) unsafe fn path_in(argument: i32, pointer: *const c_char, length: i64) -> Result<std::path::PathBuf, Failure> {
+pub(super) unsafe fn path_in(
+    argument: i32,
+    pointer: *const c_char,
+    length: i64,
+) -> Result<std::path::PathBuf, Failure> {
     // SAFETY: the same promise.
     let bytes = unsafe { bytes_in(argument, pointer, length)? };
     #[cfg(unix)]
@@ -80,7 +84,12 @@ impl TextOut {
     ///
     /// # Safety
     /// `text` has room for `capacity` bytes; `needed` is NULL or leads to one integer.
-    pub(super) unsafe fn new(argument: i32, text: *mut c_char, capacity: i64, needed: *mut i64) -> Result<Self, Failure> {
+    pub(super) unsafe fn new(
+        argument: i32,
+        text: *mut c_char,
+        capacity: i64,
+        needed: *mut i64,
+    ) -> Result<Self, Failure> {
         let fail = |code| Err(Failure::of(code, argument));
         if capacity < 0 {
             return fail(Code::NegativeCount);

@@ -30,7 +30,10 @@ pub enum Value {
 ///
 /// # Errors
 /// A sentence that names the argument and what is wrong with it.
-pub fn evaluate(function: &'static Function, given: &[(&str, &str)]) -> Result<Vec<(&'static Argument, Value)>, String> {
+pub fn evaluate(
+    function: &'static Function,
+    given: &[(&str, &str)],
+) -> Result<Vec<(&'static Argument, Value)>, String> {
     if function.kind != Kind::Scalar || function.arguments.iter().any(|argument| argument.shape.contains('×')) {
         return Err(format!("{} works on whole molecules; use tabulate", function.name));
     }
@@ -79,8 +82,9 @@ impl Arguments<'_> {
     fn number(&self, number: i32) -> Result<f64, Refusal> {
         let argument = self.argument(number)?;
         match self.text(argument.name) {
-            Some(text) => number_read(text)
-                .map_err(|_| Refusal::Words(format!("{}: '{text}' is no number", argument.name))),
+            Some(text) => {
+                number_read(text).map_err(|_| Refusal::Words(format!("{}: '{text}' is no number", argument.name)))
+            }
             None if argument.default_number.is_finite() => Ok(argument.default_number),
             None => Self::missing(argument),
         }
@@ -117,8 +121,11 @@ impl Arguments<'_> {
             return argument.default.map_or_else(|| Self::missing(argument), Ok);
         };
         choice_of(argument.group, text).ok_or_else(|| {
-            let names: Vec<&str> =
-                selectors::ALL.iter().filter(|choice| choice.group == argument.group).map(|choice| choice.name).collect();
+            let names: Vec<&str> = selectors::ALL
+                .iter()
+                .filter(|choice| choice.group == argument.group)
+                .map(|choice| choice.name)
+                .collect();
             Refusal::Words(format!("{}: '{text}' is none of {}", argument.name, names.join(" ")))
         })
     }
@@ -135,7 +142,8 @@ pub fn choice_of(group: &str, text: &str) -> Option<Selector> {
 }
 
 fn call(a: &Arguments<'_>) -> Result<Vec<Value>, Refusal> {
-    let number = |answer: Result<Quantity, Failure>| -> Result<Vec<Value>, Refusal> { Ok(vec![Value::Number(answer?)]) };
+    let number =
+        |answer: Result<Quantity, Failure>| -> Result<Vec<Value>, Refusal> { Ok(vec![Value::Number(answer?)]) };
     match a.function.name {
         "atomic_number" => {
             let text = a.text("symbol").ok_or(Failure::of(Code::Missing, 1))?;
@@ -160,13 +168,8 @@ fn call(a: &Arguments<'_>) -> Result<Vec<Value>, Refusal> {
             a.number(8)?,
         )),
         "bond_polarity" => {
-            let answer =
-                bonds::bond_polarity(a.choice(1)?, a.number(2)?, a.number(3)?, a.integer(4)?, a.integer(5)?)?;
-            Ok(vec![
-                Value::Number(answer.delta_chi),
-                Value::Choice(answer.negative_end),
-                Value::Choice(answer.class),
-            ])
+            let answer = bonds::bond_polarity(a.choice(1)?, a.number(2)?, a.number(3)?, a.integer(4)?, a.integer(5)?)?;
+            Ok(vec![Value::Number(answer.delta_chi), Value::Choice(answer.negative_end), Value::Choice(answer.class)])
         }
         "ionic_character" => number(bonds::ionic_character(a.choice(1)?, a.quantity(2)?)),
         "charge_from_dipole" => number(charges::charge_from_dipole(a.quantity(1)?, a.quantity(2)?)),
@@ -200,8 +203,12 @@ mod tests {
                         .iter()
                         .find_map(|(argument, value)| match value {
                             Value::Number(q) if argument.name == name => Some((q.value, number_read(expected).ok()?)),
-                            Value::Number(q) if argument.uncertainty == name => Some((q.u, number_read(expected).ok()?)),
-                            Value::Integer(i) if argument.name == name => Some((f64::from(*i), number_read(expected).ok()?)),
+                            Value::Number(q) if argument.uncertainty == name => {
+                                Some((q.u, number_read(expected).ok()?))
+                            }
+                            Value::Integer(i) if argument.name == name => {
+                                Some((f64::from(*i), number_read(expected).ok()?))
+                            }
                             Value::Choice(c) if argument.name == name => {
                                 Some((f64::from(c.0), f64::from(choice_of(argument.group, expected)?.0)))
                             }

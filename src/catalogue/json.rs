@@ -189,9 +189,8 @@ pub fn text() -> String {
 }
 
 fn blocks() -> Vec<Block> {
-    let array = |name, kind, shape, unit, required, index, help| BlockArray {
-        name, kind, shape, unit, required, index, help,
-    };
+    let array =
+        |name, kind, shape, unit, required, index, help| BlockArray { name, kind, shape, unit, required, index, help };
     vec![
         Block {
             name: "molecules",
@@ -229,11 +228,7 @@ fn function_text(function: &'static Function) -> FunctionText {
         arguments: function.arguments.iter().map(argument_text).collect(),
         results: function.results.iter().map(argument_text).collect(),
         statuses: function.statuses.iter().map(|code| code.name()).collect(),
-        remarks: remark::ALL
-            .iter()
-            .filter(|(bit, ..)| function.remarks & bit != 0)
-            .map(|&(_, name, _)| name)
-            .collect(),
+        remarks: remark::ALL.iter().filter(|(bit, ..)| function.remarks & bit != 0).map(|&(_, name, _)| name).collect(),
         notes: function.notes,
         sources: function.sources,
         examples: function.examples.iter().map(example_text).collect(),

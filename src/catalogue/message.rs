@@ -38,12 +38,14 @@ fn with_argument(argument: &Argument, code: Code) -> String {
 /// The declared limits in words, with the unit.
 fn limits(argument: &Argument) -> Option<String> {
     let unit = if argument.unit.is_empty() { String::new() } else { format!(" {}", argument.unit) };
-    let low = argument.minimum.is_finite().then(|| {
-        format!("{} {}", if argument.above { "above" } else { "at least" }, argument.minimum)
-    });
-    let high = argument.maximum.is_finite().then(|| {
-        format!("{} {}", if argument.below { "below" } else { "at most" }, argument.maximum)
-    });
+    let low = argument
+        .minimum
+        .is_finite()
+        .then(|| format!("{} {}", if argument.above { "above" } else { "at least" }, argument.minimum));
+    let high = argument
+        .maximum
+        .is_finite()
+        .then(|| format!("{} {}", if argument.below { "below" } else { "at most" }, argument.maximum));
     match (low, high) {
         (Some(low), Some(high)) => Some(format!("{low} and {high}{unit}")),
         (Some(one), None) | (None, Some(one)) => Some(format!("{one}{unit}")),

@@ -47,7 +47,8 @@ impl Lookup {
             match value.split_once('=') {
                 Some(pair) => given.push(pair),
                 None => {
-                    let place = places.next().ok_or_else(|| format!("{name} takes no further value than before {value}"))?;
+                    let place =
+                        places.next().ok_or_else(|| format!("{name} takes no further value than before {value}"))?;
                     given.push((place.name, value));
                 }
             }
@@ -122,11 +123,7 @@ fn cells(results: &[(&'static Argument, Value)]) -> Vec<(String, Cell)> {
     cells
 }
 
-fn plain(
-    function: &Function,
-    given: &[(&str, &str)],
-    results: &[(&'static Argument, Value)],
-) -> Result<(), Trouble> {
+fn plain(function: &Function, given: &[(&str, &str)], results: &[(&'static Argument, Value)]) -> Result<(), Trouble> {
     let mut out = stdout().lock();
     for (argument, value) in results {
         let unit = if argument.unit.is_empty() { String::new() } else { format!(" {}", argument.unit) };
@@ -166,7 +163,11 @@ fn without_u(function: &Function, given: &[(&str, &str)]) -> String {
         .map(|argument| argument.uncertainty)
         .filter(|u| !u.is_empty() && !given.iter().any(|(name, _)| name == u))
         .collect();
-    if missing.is_empty() { "no uncertainty published".to_owned() } else { format!("no uncertainty without {}", missing.join(", ")) }
+    if missing.is_empty() {
+        "no uncertainty published".to_owned()
+    } else {
+        format!("no uncertainty without {}", missing.join(", "))
+    }
 }
 
 /// What stands behind the very value, for a look-up in a table.
@@ -215,7 +216,9 @@ fn describe(function: &Function) -> Result<Outcome, Trouble> {
         for argument in arguments {
             let default = match argument.default {
                 Some(choice) => format!("default {}", choice.name()),
-                None if argument.default_number.is_finite() => format!("default {}", number_text(argument.default_number)),
+                None if argument.default_number.is_finite() => {
+                    format!("default {}", number_text(argument.default_number))
+                }
                 None => String::new(),
             };
             let name = match argument.uncertainty {

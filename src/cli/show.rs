@@ -44,7 +44,8 @@ fn exponent(value: f64) -> i32 {
 /// Lines of cells as columns; the first line is the head.
 pub(crate) fn columns(out: &mut impl Write, lines: &[Vec<String>]) -> io::Result<()> {
     let count = lines.iter().map(Vec::len).max().unwrap_or(0);
-    let width = |k: usize| lines.iter().filter_map(|line| line.get(k)).map(|cell| cell.chars().count()).max().unwrap_or(0);
+    let width =
+        |k: usize| lines.iter().filter_map(|line| line.get(k)).map(|cell| cell.chars().count()).max().unwrap_or(0);
     let widths: Vec<usize> = (0..count).map(width).collect();
     for line in lines {
         let mut text = String::new();

@@ -44,7 +44,8 @@ impl Sources {
     }
 
     fn list(&self) -> Result<Outcome, Trouble> {
-        let sources = || selectors::ALL.iter().filter_map(|choice| Some((choice, tables::source(choice.selector).ok()?)));
+        let sources =
+            || selectors::ALL.iter().filter_map(|choice| Some((choice, tables::source(choice.selector).ok()?)));
         let mut out = stdout().lock();
         match self.layout {
             Layout::Plain => {
@@ -60,7 +61,9 @@ impl Sources {
                     ];
                     let counts = counts(choice.selector);
                     if counts.iter().any(|&count| count > 0) {
-                        line.extend(counts.iter().map(|&count| if count > 0 { count.to_string() } else { String::new() }));
+                        line.extend(
+                            counts.iter().map(|&count| if count > 0 { count.to_string() } else { String::new() }),
+                        );
                     }
                     lines.push(line);
                 }
@@ -77,7 +80,8 @@ impl Sources {
                     let counts: Vec<String> = counts(choice.selector).iter().map(ToString::to_string).collect();
                     let year = source.year.map_or(String::new(), |year| year.to_string());
                     let texts = [choice.name, &source.author, &year, &source.journal, &source.doi, &source.mark];
-                    let texts: Vec<String> = texts.iter().map(|text| format!("\"{}\"", text.replace('"', "\"\""))).collect();
+                    let texts: Vec<String> =
+                        texts.iter().map(|text| format!("\"{}\"", text.replace('"', "\"\""))).collect();
                     writeln!(out, "{},{}", texts.join(","), counts.join(","))?;
                 }
             }

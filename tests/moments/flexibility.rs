@@ -124,7 +124,9 @@ fn what_is_a_hinge() {
         let bonds = pairs.iter().map(|&(a, b, order)| Bond { a, b, order }).collect();
         let bonding = Bonding { bonds, ..Bonding::default() };
         let molecule = Molecule { atomic_number: z, formal_charge: None, xyz: &xyz };
-        greatest_dipole(molecule, &bonding, &Charges { charge: vec![0.0; z.len()], u: None, along_bond: None }).unwrap().hinges
+        greatest_dipole(molecule, &bonding, &Charges { charge: vec![0.0; z.len()], u: None, along_bond: None })
+            .unwrap()
+            .hinges
     };
     // N-methylformamide without hydrogens on carbon: O=C-N(H)-C-H: only N-CH turns.
     let amide = [(0, 1, 2.0), (1, 2, 1.0), (2, 3, 1.0), (2, 4, 1.0), (4, 5, 1.0)];
