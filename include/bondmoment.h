@@ -6,12 +6,15 @@
      Every function returns a status, 0 (BMOM_OK) when all is well. A status is code + 1000 x argument: 2052 says that
      argument 2 (its number in the catalogue and in the comments below) is out of range. bmom_status_message words it.
      Codes 10 to 49 concern the call, 50 and above one row. The status decides, never NaN: after a failure results hold
-     the quiet NaN 0x7FF8000000000000, INT32_MIN or an empty text.
+     the quiet NaN 0x7FF8000000000000, INT32_MIN or an empty text; but a call of a column form that fails as a whole
+     leaves every array of the caller as it was, row_status included. A status without an argument concerns settings,
+     threads (0 to 1024), stop, row_status, row_remarks, row_item, or the call as a whole.
    Scalar, column, molecules
      The plain form answers one row. The _column form answers n rows; a row that fails has its own row_status and never
      stops the others; the call then returns BMOM_SOME_ROWS or BMOM_NO_ROWS. Columns of molecules are flat arrays: the
      atoms of row r are atom_offsets[r] to atom_offsets[r + 1] - 1 of every atom array (the layout of an Arrow list
-     column). row_status, row_remarks and row_item may be NULL.
+     column). row_status, row_remarks and row_item may be NULL. n = 0 may come with NULL arrays. row_item is the index of
+     the atom, bond or charge within its row that a status or a remark is about, -1 where there is none.
    Uncertainty
      u_x beside x is its standard uncertainty (k = 1). In: NaN (scalar) or NULL (column) is not known, 0 is exact,
      negative is an error. Out: NaN where none can be given; NULL where it is not wanted.
@@ -20,12 +23,16 @@
      bmom_convert converts. A dipole points from - to +. The negative end of a bond is its more electronegative atom.
      Indices count from 0.
    Choices
-     Tables, laws, models, units and states are chosen by one numbering; 0 never chooses. There are no defaults here:
-     the catalogue (bmom_catalogue) names the default of every argument.
+     Tables, laws, models, units and states are chosen by one numbering, listed below in groups; 0 never chooses. There
+     are no defaults here: the catalogue (bmom_catalogue) names the default of every argument.
    Arrays and texts
      Arrays belong to the caller, are contiguous and aligned, and no output may overlap another array. Texts in are UTF-8
-     with their length in bytes, or -1 for a NUL-terminated text. Texts out: at most `capacity` bytes, cut at a
-     character, with a NUL where it fits; `needed` is the full length without NUL.
+     with their length in bytes, or -1 for a NUL-terminated text (Fortran passes the trimmed length). Texts out: at most
+     `capacity` bytes, cut at a character; `needed` (may be NULL) is the full length without NUL. A NUL follows where
+     capacity is above needed; capacity 0 with a NULL text asks for the length.
+   Handles
+     What a _new, _read, _open or table function returns is freed by its _free, which takes NULL. A handle must not be
+     freed while a call uses it (request a stop and wait for STOPPED first), nor used afterwards.
    Threads
      Every function may be called from any thread. threads = 1 uses the caller's thread only, 0 all that this process
      may use. Nothing is printed, no signal handler is set, no state is kept between calls except in handles.
@@ -60,13 +67,13 @@
 #define BMOM_NOT_UTF8 21 /* a text is not UTF-8 */
 #define BMOM_UNKNOWN_NAME 22 /* nothing has this name */
 #define BMOM_WRONG_TYPE 23 /* the column or setting is of another type */
-#define BMOM_BAD_HANDLE 24 /* this is no handle of this library, or it has been freed */
+#define BMOM_BAD_HANDLE 24 /* this is no handle of this library */
 #define BMOM_BUSY 25 /* another thread is using this handle */
 #define BMOM_OTHER_PROCESS 26 /* the handle was opened in another process */
 #define BMOM_STOPPED 27 /* the job was stopped on request */
 #define BMOM_FILE_MISSING 28 /* there is no such file */
 #define BMOM_FILE_UNREADABLE 29 /* the file cannot be read */
-#define BMOM_BAD_FORMAT 30 /* the content is in no format that is read here */
+#define BMOM_BAD_FORMAT 30 /* the text or file is in no format that is read here */
 #define BMOM_MISSING 50 /* a value is missing */
 #define BMOM_NOT_FINITE 51 /* a value is infinite */
 #define BMOM_OUT_OF_RANGE 52 /* a value is outside its range */
@@ -130,7 +137,7 @@
 #define BMOM_LENGTH_SCHOMAKER_STEVENSON_1941 112 /* radius sum less 0.09 A times the difference of electronegativity */
 #define BMOM_LENGTH_PAULING_ORDER_1960 113 /* radius sum less 0.71 A log10 n, covalent bonds, orders 1 to 3 */
 #define BMOM_LENGTH_PAULING_ORDER_1947 114 /* radius sum less 0.60 A log10 n, bonds between metals, orders 0.05 to 1 */
-#define BMOM_LENGTH_BY_ORDER 115 /* by the bond order: 1 the radii named, 2 and 3 Pyykko's double and triple radii, 1.5 Pauling's law */
+#define BMOM_LENGTH_BY_ORDER 115 /* by the bond order: 1 the radii named, 2 and 3 Pyykko's double and triple radii, 1.5 the mean of 1 and 2 */
 
 /* vdw radii */
 #define BMOM_VDW_BONDI_1964 121 /* van der Waals radii, Bondi 1964 */
@@ -189,6 +196,7 @@
 #define BMOM_FORMAT_BY_CONTENT 281 /* told by the content */
 #define BMOM_FORMAT_XYZ 282 /* XYZ, one or many frames */
 #define BMOM_FORMAT_CTFILE 283 /* CTfile molfile or SD file */
+#define BMOM_FORMAT_CML 284 /* Chemical Markup Language */
 
 /* unit */
 #define BMOM_UNIT_ANGSTROM 301 /* A */
@@ -237,13 +245,17 @@
 typedef struct bmom_library bmom_library;
 
 /*
- Settings of a run: what may be chosen stands in the catalogue under "settings". They freeze at first use and may then
- be shared by threads.
+ Settings of a run. They freeze at first use and may then be shared by threads. By name (exactly as here; ranges and
+ defaults stand in the catalogue under "settings"):
+ choices: charge_model, electronegativity, ionic_law, covalent_radii, vdw_radii;
+ numbers: polar_from, ionic_from (not below polar_from, checked at first use), polarity_limit_D [D],
+ position_uncertainty_A [A];
+ texts: name_item, carry_items.
  */
 typedef struct bmom_settings bmom_settings;
 
 /*
- A request to stop a long call, from any thread or from a signal handler.
+ A request to stop a long call, from any thread or from a signal handler. Once requested it stays so.
  */
 typedef struct bmom_stop bmom_stop;
 
@@ -305,8 +317,9 @@ int32_t bmom_selector(const char *name, int64_t name_length, int32_t *selector);
 
 /*
  The words of a status of a function: which argument is at fault, and what is wrong with it.
- Given: 1 function, its name without bmom_ and _column, or an empty text [text]; 2 status. Returned: 3 text (UTF-8).
- Status: UNKNOWN_NAME, BUFFER_TOO_SMALL, NOT_UTF8, NULL_POINTER, NEGATIVE_COUNT.
+ Given: 1 function, its name with or without bmom_ and _column, or an empty text [text]; 2 status. Returned: 3 text
+ (UTF-8). Status: BUFFER_TOO_SMALL, NOT_UTF8, NULL_POINTER, NEGATIVE_COUNT.
+ Notes: the arguments of worksheet functions are named; those of other functions are numbered, as in their comments.
  */
 int32_t bmom_status_message(const char *function,
                             int64_t function_length,
@@ -324,7 +337,9 @@ int32_t bmom_status_message(const char *function,
 int32_t bmom_source(int32_t selector, char *text, int64_t capacity, int64_t *needed);
 
 /*
- What stands behind one value of a table: how well it is verified, and its citation with any dispute.
+ What stands behind one value of a table: how well it is verified, and its citation with any dispute, as a JSON object
+ with table, title, author, year, journal, doi, unit, value, u (in the unit that the publication prints), state, mark and
+ note.
  Given: 1 table; 2 atomic_number; 3 state (BMOM_STATE_AS_LISTED where the table has none).
  Returned: 4 mark (BMOM_MARK_...); 5 text (UTF-8).
  Status: UNKNOWN_SELECTOR, WRONG_SELECTOR, UNKNOWN_ELEMENT, MISSING, NO_DATA, BUFFER_TOO_SMALL, NULL_POINTER.
@@ -344,10 +359,10 @@ int32_t bmom_value_source(int32_t table,
 int32_t bmom_self_test(int32_t what);
 
 /*
- A number as text: the fewest digits that read back to the same bits, with an exponent below 1e-5 and from 1e16 on; an
- empty text for NaN. Every host that prints with it prints the same digits.
- Given: 1 value. Returned: 2 text.
- Status: BUFFER_TOO_SMALL (24 bytes are always enough), NULL_POINTER, NEGATIVE_COUNT.
+ A number as text: the fewest digits that read back to the same number, with an exponent below 1e-5 and from 1e16 on; an
+ empty text for NaN, 0 for minus zero, inf for infinity. Every host that prints with it prints the same digits.
+ Given: 1 value. Returned: 2 text (25 bytes are always enough, NUL included).
+ Status: BUFFER_TOO_SMALL, NULL_POINTER, NEGATIVE_COUNT.
  */
 int32_t bmom_number_text(double value,
                          char *text,
@@ -355,11 +370,14 @@ int32_t bmom_number_text(double value,
                          int64_t *needed);
 
 /*
- The number in a text, with a decimal point in every locale, correctly rounded.
+ The number in a text, with a decimal point in every locale, correctly rounded; Fortran's exponents (1.0D+02) are read.
  Given: 1 text. Returned: 2 value.
- Status: MISSING (blank), BAD_FORMAT (no number), NOT_UTF8, NULL_POINTER.
+ Status: MISSING (blank or nan), NOT_FINITE (inf, or beyond all doubles), BAD_FORMAT (no number), NOT_UTF8, NULL_POINTER,
+ NEGATIVE_COUNT.
  */
-int32_t bmom_number_read(const char *text, int64_t text_length, double *value);
+int32_t bmom_number_read(const char *text,
+                         int64_t text_length,
+                         double *value);
 
 /*
  Atomic number of a symbol or English name, in any case, blanks around it ignored; D and T are hydrogen.
@@ -555,8 +573,8 @@ int32_t bmom_convert_column(int32_t from_unit,
 
 /*
  Expected length of a bond between two elements.
- Given: 1 radii (BMOM_RADII_...); 2 law (BMOM_LENGTH_...); 3 scale (BMOM_ELECTRONEGATIVITY_..., used by the
- Schomaker-Stevenson law); 4 atomic_number_a; 5 state_a; 6 atomic_number_b; 7 state_b (BMOM_STATE_...); 8 bond_order.
+ Given: 1 radii (BMOM_RADII_...); 2 law (BMOM_LENGTH_...); 3 scale (BMOM_ELECTRONEGATIVITY_...; only the
+ Schomaker-Stevenson law uses it, but it must be one); 4 atomic_number_a; 5 state_a; 6 atomic_number_b; 7 state_b (BMOM_STATE_...); 8 bond_order.
  Returned: 9 length_A, u_length_A [A].
  Status: UNKNOWN_SELECTOR, WRONG_SELECTOR, NOT_ALLOWED (law with these radii or this scale), MISSING, NOT_FINITE,
  UNKNOWN_ELEMENT, OUT_OF_RANGE (order, or element outside the law), NO_DATA, NULL_POINTER.
@@ -665,7 +683,8 @@ int32_t bmom_ionic_character_column(int32_t law,
  capacity: room in bonds; needed: bonds found. Where the room is too small (BUFFER_TOO_SMALL) found_offsets, needed and
  the rows' ends are right and no bond is written. row_item: the atom at fault or that a remark is about.
  Status of a row: MISSING, NOT_FINITE, OUT_OF_RANGE, UNKNOWN_ELEMENT, NO_ATOMS, ATOMS_TOO_CLOSE.
- Remarks: IMPOSSIBLE_VALENCE, ORDERS_NOT_ASSIGNED, CHARGES_FOUND, OPEN_SHELL, BONDS_FOUND.
+ Remarks: IMPOSSIBLE_VALENCE, ORDERS_NOT_ASSIGNED, CHARGES_FOUND, OPEN_SHELL, BONDS_FOUND, SEVERAL_FRAGMENTS.
+ capacity 0 with NULL arrays asks for the number alone.
  Notes: time is linear in the atoms, up to 10^6 in one molecule. The method is our own; radii as bmom_covalent_radius.
  */
 int32_t bmom_find_bonds_column(int32_t rule,
@@ -689,7 +708,7 @@ int32_t bmom_find_bonds_column(int32_t rule,
                                int32_t *row_status);
 
 /*
- One molecule: as bmom_find_bonds_column with one row. found_atoms has room for 2 x capacity integers, found_order and
+ One molecule: as bmom_find_bonds_column with one row, default settings and the caller's thread. found_atoms has room for 2 x capacity integers, found_order and
  found_length_A for capacity numbers; needed is the number of bonds.
  */
 int32_t bmom_find_bonds(int32_t rule,
@@ -789,10 +808,10 @@ int32_t bmom_length_from_dipole_column(int64_t n,
  2 molecules: n, atom_offsets (n + 1), n_atoms, atomic_number, formal_charge [e] (NULL: derived), xyz_A [A] (3 an atom);
  3 bonds: bond_offsets (n + 1; NULL: found), n_bonds, bond_atoms (2 a bond, counted from 0 within the molecule),
  bond_order. Returned: 4 charge_e, u_charge_e [e], an atom each at the index of its atom; u is NaN for a model without.
- row_item: the atom or bond at fault.
- Status of a row: NO_DATA (the model has no parameters for an atom), BAD_BOND, ATOMS_TOO_CLOSE, NO_ATOMS,
+ row_item: the bond at fault where the status names argument 3, else the atom; -1: none.
+ Status of a row: NO_DATA (1101: the model has no parameters for an atom as it is bonded), BAD_BOND, ATOMS_TOO_CLOSE, NO_ATOMS,
  UNKNOWN_ELEMENT, MISSING, NOT_FINITE, OUT_OF_RANGE. Of the call: NOT_ALLOWED (GIVEN), BAD_OFFSETS, ...
- Remarks: BONDS_FOUND, CHARGES_FOUND, IMPOSSIBLE_VALENCE, ORDERS_NOT_ASSIGNED.
+ Remarks: BONDS_FOUND, CHARGES_FOUND, IMPOSSIBLE_VALENCE, ORDERS_NOT_ASSIGNED, SEVERAL_FRAGMENTS.
  Notes: PEOE is a sigma model with six sweeps; delocalised formal charge (carboxylate, nitro) is shared first. It fails
  for pi systems (C=O, NO2 and CN come out far too small) and for the sign of carbon monoxide.
  Reference: Gasteiger and Marsili, Tetrahedron 1980, 36, 3219 (parameters from memory, partly corroborated).
@@ -817,7 +836,8 @@ int32_t bmom_partial_charges_column(int32_t model,
                                     int32_t *row_status);
 
 /*
- One molecule: as bmom_partial_charges_column with one row. bond_atoms NULL: bonds are found.
+ One molecule: as bmom_partial_charges_column with one row, default settings and the caller's thread. bond_atoms NULL
+ with n_bonds 0: bonds are found.
  */
 int32_t bmom_partial_charges(int32_t model,
                              int64_t n_atoms,
@@ -839,12 +859,13 @@ int32_t bmom_partial_charges(int32_t model,
  (NULL: derived), xyz_A [A] (3 an atom); 4 bonds: bond_offsets (n + 1; NULL: found), n_bonds, bond_atoms (2 a bond),
  bond_order; 5 charge_e, u_charge_e [e] (an atom each, with BMOM_CHARGES_GIVEN and only with it).
  Returned: 6 dipole_D [D] (3 a row), covariance_D2 [D^2] (9 a row; NaN where not known; NULL: not wanted);
- 7 magnitude_D, u_magnitude_D [D]; 8 origin_A [A] (3 a row; NULL: not wanted). row_item: the atom or bond at fault.
- Status of a row: NO_DATA (an atom has no parameters), BAD_BOND, ATOMS_TOO_CLOSE, NO_ATOMS, UNKNOWN_ELEMENT, MISSING,
+ 7 magnitude_D, u_magnitude_D [D]; 8 origin_A [A] (3 a row; NULL: not wanted). row_item:
+ the bond at fault where the status names argument 4, else the atom; -1: none.
+ Status of a row: NO_DATA (1101: the model has no parameters for an atom as it is bonded), BAD_BOND, ATOMS_TOO_CLOSE, NO_ATOMS, UNKNOWN_ELEMENT, MISSING,
  NOT_FINITE, OUT_OF_RANGE, NEGATIVE_UNCERTAINTY. Of the call: NOT_ALLOWED (charge_e and model), BAD_OFFSETS, ...
  Remarks: CHARGED (the dipole depends on the origin), BONDS_FOUND, CHARGES_FOUND, IMPOSSIBLE_VALENCE, ...
- Notes: the net charge is exact, so the uncertainties of the charges are conditioned on it. A model without its own
- uncertainty gives NaN. PEOE fails for pi systems; see bmom_partial_charges_column.
+ Notes: the net charge is exact, so the uncertainties of the charges are conditioned on it. PEOE states no uncertainty:
+ its covariance_D2 and u_magnitude_D are NaN; given charges have them where u_charge_e is given. PEOE fails for pi systems; see bmom_partial_charges_column.
  Reference: E. R. Cohen et al., Quantities, Units and Symbols in Physical Chemistry, 3rd ed., IUPAC 2007 (from memory).
  */
 int32_t bmom_dipole_column(int32_t model,
@@ -873,7 +894,8 @@ int32_t bmom_dipole_column(int32_t model,
                            int32_t *row_status);
 
 /*
- One molecule: as bmom_dipole_column with one row. bond_atoms NULL: bonds are found.
+ One molecule: as bmom_dipole_column with one row, default settings and the caller's thread. bond_atoms NULL with n_bonds
+ 0: bonds are found.
  */
 int32_t bmom_dipole(int32_t model,
                     int32_t frame,
@@ -940,7 +962,8 @@ int32_t bmom_dipole_of_charges_column(const struct bmom_settings *settings,
  Polar, non-polar or undecided, from a dipole vector and its covariance.
  Given: 1 limit_D [D] (usually 0.2); 2 dipole_D [D] (3), covariance_D2 [D^2] (9).
  Returned: 3 polarity (BMOM_POLARITY_...).
- Status: MISSING, NOT_FINITE, OUT_OF_RANGE, NEGATIVE_UNCERTAINTY (no covariance), NULL_POINTER.
+ Status: MISSING (also for a covariance that is NaN, as that of PEOE dipoles is), NOT_FINITE, OUT_OF_RANGE (limit; or a
+ matrix that is no covariance), NULL_POINTER (covariance_D2 must be given).
  Notes: polar where |mu| - 2 u > limit; non-polar where |mu| + 2.8 sqrt(largest eigenvalue of the covariance) <= limit
  (2.8 is the 95 % radius of a normal distribution in three dimensions); else undecided. One conformer is not the
  molecule: the polarity table also bounds what turning about bonds can do.
@@ -1024,7 +1047,8 @@ void bmom_stop_free(struct bmom_stop *stop);
  2 path [text; raw bytes on Unix]. Returned: 3 library, NULL after any failure; free it with bmom_library_free.
  Status: FILE_MISSING, FILE_UNREADABLE, BAD_FORMAT, UNKNOWN_SELECTOR, WRONG_SELECTOR, STOPPED, BAD_HANDLE, BUSY,
  NULL_POINTER. Notes: a broken record keeps its place; its row says what is wrong.
- Reference: CTfile Formats, the published specification (V2000 molfiles and SD files); XYZ is common practice.
+ Reference: CTfile Formats, the published specification (molfiles and SD files, V2000 and V3000); Chemical Markup Language,
+ Murray-Rust, Rzepa 1999; gzip (any of them, told by the content), RFC 1952; XYZ is common practice.
  */
 int32_t bmom_library_read(int32_t format,
                           const struct bmom_settings *settings,
@@ -1100,7 +1124,14 @@ int32_t bmom_library_arrays(const struct bmom_library *library,
                             int32_t *row_status);
 
 /*
- The three tables of some records of a library; their columns stand in the catalogue.
+ The three tables of some records of a library. Columns, by name (types, units and meanings stand in the catalogue under
+ "tables"):
+ polarity: record, compound, formula, atoms, net_charge, fragments, charge_sites, structure_kind, dipole_D, u_dipole_D,
+ dipole_x_D, dipole_y_D, dipole_z_D, cov_xx_D2, cov_yy_D2, cov_zz_D2, cov_xy_D2, cov_xz_D2, cov_yz_D2, polarity,
+ strongest_bond, delta_chi, negative_end, strongest_bond_charge_e, charge_model, data_version, status, detail, then data_...;
+ bonds: record, compound, atom_a, atom_b, element_a, element_b, order, length_A, expected_A, u_expected_A, deviation_A,
+ delta_chi, negative_end, ionic_percent, bond_charge_e, class;
+ atoms: record, compound, atom, element, x_A, y_A, z_A, charge_e, u_charge_e, covalent_radius_A, vdw_radius_A.
  Given: 1 library; 2 measured (NULL: no measured dipoles are compared in this version); settings (NULL: defaults);
  threads; stop (NULL: none); 3 first (from 0); 4 n. Returned: 5 polarity; 6 bonds; 7 atoms: NULL where that table is not
  wanted; NULL is written after any failure. Free each with bmom_table_free.
@@ -1145,7 +1176,7 @@ int32_t bmom_tabulation_open(const struct bmom_table *measured,
  The tables of the next records of a run.
  Given: 1 tabulation; stop (NULL: none); 2 max_molecules (from 1). Returned: 3 polarity; 4 bonds; 5 atoms: NULL where that
  table is not wanted; NULL is written after any failure. Free each with bmom_table_free.
- Status: END (no record is left), STOPPED (the next call goes on with the same records), FILE_MISSING, FILE_UNREADABLE,
+ Status: END (no record is left), STOPPED (the next call, with another stop handle, goes on with the same records), FILE_MISSING, FILE_UNREADABLE,
  BAD_FORMAT (a file has changed), OUT_OF_RANGE, BUSY, OTHER_PROCESS, BAD_HANDLE, NULL_POINTER.
  */
 int32_t bmom_tabulation_next(struct bmom_tabulation *tabulation,
@@ -1156,7 +1187,8 @@ int32_t bmom_tabulation_next(struct bmom_tabulation *tabulation,
                              struct bmom_table **atoms);
 
 /*
- How far a run has come; any thread may ask at any time, also while another is in bmom_tabulation_next.
+ How far a run has come, in whole batches; any thread may ask at any time, also while another is in
+ bmom_tabulation_next.
  Given: 1 tabulation. Returned: 2 molecules_done; 3 bytes_done; 4 bytes_total (0: not known); each may be NULL.
  Status: BAD_HANDLE, NULL_POINTER.
  */
@@ -1207,7 +1239,8 @@ int32_t bmom_table_column(const struct bmom_table *table,
                           int32_t *type_);
 
 /*
- Numbers of a column of type NUMBER, NaN where a cell has no value.
+ Numbers of a column of type NUMBER, NaN where a cell has no value. The call is OK though every cell be without one:
+ cell_status says why.
  Given: 1 table; 2 column (from 0); 3 first (row, from 0); 4 n. Returned: 5 values (n); 6 cell_status (n; NULL: not
  wanted). Status: WRONG_TYPE, OUT_OF_RANGE, NEGATIVE_COUNT, BAD_HANDLE, NULL_POINTER, OVERLAP.
  */

@@ -56,6 +56,8 @@ pub struct Argument {
     pub above: bool,
     /// The largest value itself is not allowed.
     pub below: bool,
+    /// The range in words, after "must be", where limits alone do not tell it.
+    pub range: &'static str,
     /// It must be given.
     pub required: bool,
     /// Default of a selector, which every host passes where the caller names none.
@@ -85,6 +87,7 @@ pub const NUMBER: Argument = Argument {
     maximum: f64::INFINITY,
     above: false,
     below: false,
+    range: "",
     required: true,
     default: None,
     default_number: f64::NAN,

@@ -66,7 +66,7 @@ selectors! {
         LENGTH_SCHOMAKER_STEVENSON_1941 = 112, "radius sum less 0.09 Å times the difference of electronegativity";
         LENGTH_PAULING_ORDER_1960 = 113, "radius sum less 0.71 Å log10 n, covalent bonds, orders 1 to 3";
         LENGTH_PAULING_ORDER_1947 = 114, "radius sum less 0.60 Å log10 n, bonds between metals, orders 0.05 to 1";
-        LENGTH_BY_ORDER = 115, "by the bond order: 1 the radii named, 2 and 3 Pyykkö's double and triple radii, 1.5 Pauling's law";
+        LENGTH_BY_ORDER = 115, "by the bond order: 1 the radii named, 2 and 3 Pyykkö's double and triple radii, 1.5 the mean of 1 and 2";
     }
     "vdw_radii" {
         VDW_BONDI_1964 = 121, "van der Waals radii, Bondi 1964";
@@ -125,6 +125,7 @@ selectors! {
         FORMAT_BY_CONTENT = 281, "told by the content";
         FORMAT_XYZ = 282, "XYZ, one or many frames";
         FORMAT_CTFILE = 283, "CTfile molfile or SD file";
+        FORMAT_CML = 284, "Chemical Markup Language";
     }
     "unit" {
         UNIT_ANGSTROM = 301, "Å";

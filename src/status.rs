@@ -53,13 +53,13 @@ codes! {
     NotUtf8 = 21, "NOT_UTF8", "a text is not UTF-8";
     UnknownName = 22, "UNKNOWN_NAME", "nothing has this name";
     WrongType = 23, "WRONG_TYPE", "the column or setting is of another type";
-    BadHandle = 24, "BAD_HANDLE", "this is no handle of this library, or it has been freed";
+    BadHandle = 24, "BAD_HANDLE", "this is no handle of this library";
     Busy = 25, "BUSY", "another thread is using this handle";
     OtherProcess = 26, "OTHER_PROCESS", "the handle was opened in another process";
     Stopped = 27, "STOPPED", "the job was stopped on request";
     FileMissing = 28, "FILE_MISSING", "there is no such file";
     FileUnreadable = 29, "FILE_UNREADABLE", "the file cannot be read";
-    BadFormat = 30, "BAD_FORMAT", "the content is in no format that is read here";
+    BadFormat = 30, "BAD_FORMAT", "the text or file is in no format that is read here";
     // Any cell.
     Missing = 50, "MISSING", "a value is missing";
     NotFinite = 51, "NOT_FINITE", "a value is infinite";

@@ -155,7 +155,14 @@ pub static CONVERT: Function = Function {
     formula: "",
     arguments: &[
         FROM,
-        Argument { number: 2, name: "to_unit", label: "to unit", help: "Unit that the result is in", ..FROM },
+        Argument {
+            number: 2,
+            name: "to_unit",
+            label: "to unit",
+            range: "a unit of the same kind as from_unit",
+            help: "Unit that the result is in",
+            ..FROM
+        },
         Argument { number: 3, ..VALUE },
     ],
     results: &[Argument {

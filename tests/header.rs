@@ -213,3 +213,18 @@ fn versions_agree() {
     assert!(dynamic.contains(&format!("[{soname}]")), "{dynamic}");
     assert!(selectors::ALL.iter().all(|choice| choice.selector.0 > 0));
 }
+
+/// Programs in C read the names of settings and columns in the header, not in the catalogue.
+#[test]
+fn the_header_names_every_setting_and_column() {
+    let header = std::fs::read_to_string(concat!(env!("CARGO_MANIFEST_DIR"), "/include/bondmoment.h")).unwrap();
+    let words: std::collections::BTreeSet<&str> =
+        header.split(|c: char| !c.is_ascii_alphanumeric() && c != '_').collect();
+    for setting in bondmoment::library::settings::SETTINGS {
+        assert!(words.contains(setting.name), "setting {}", setting.name);
+    }
+    use bondmoment::library::polarity_table::{ATOMS_COLUMNS, BONDS_COLUMNS, POLARITY_COLUMNS};
+    for column in [POLARITY_COLUMNS, BONDS_COLUMNS, ATOMS_COLUMNS].into_iter().flatten() {
+        assert!(words.contains(column.name), "column {}", column.name);
+    }
+}

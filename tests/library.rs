@@ -1,10 +1,13 @@
 //! Files of structures in, the polarity table out: readers, kinds of record, rows, runs.
 
 mod library {
+    mod cml;
+    mod packed;
     mod reading;
     mod robust;
     mod rows;
     mod runs;
+    mod v3000;
 
     use std::path::PathBuf;
     use std::sync::atomic::AtomicBool;

@@ -11,7 +11,7 @@ static int failed(const char *function, int32_t status)
 {
     char text[200];
     if (status == BMOM_OK) return 0;
-    bmom_status_message(function, -1, status, text, sizeof text, NULL);
+    if (bmom_status_message(function, -1, status, text, sizeof text, NULL) != BMOM_OK) text[0] = '\0';
     fprintf(stderr, "%s: %s\n", function, text);
     return 1;
 }
@@ -40,8 +40,10 @@ int main(void)
         if (failed("dipole", bmom_dipole(BMOM_CHARGES_PEOE_1980, BMOM_FRAME_AS_GIVEN, 5, elements, NULL, xyz_A,
                                          0, NULL, NULL, NULL, NULL, dipole_D, NULL, &magnitude_D, &u_magnitude_D,
                                          NULL, NULL, NULL))) return 1;
-        printf("CH3F: (%.3f, %.3f, %.3f) D, from - to +; |mu| = %.3f D\n", dipole_D[0], dipole_D[1], dipole_D[2],
+        printf("CH3F: (%.3f, %.3f, %.3f) D, from - to +; |mu| = %.3f D", dipole_D[0], dipole_D[1], dipole_D[2],
                magnitude_D);
+        if (u_magnitude_D >= 0.0) printf(" +- %.3f D\n", u_magnitude_D);
+        else printf(" (PEOE states no uncertainty)\n");
     }
 
     /* Bad input is a status in words, not a crash. */

@@ -14,8 +14,14 @@ const COVALENT_ORDER_A: f64 = 0.71;
 /// Coefficient for bonds between metals, Pauling, J. Am. Chem. Soc. 1947, 69, 542 [Å] (from memory).
 const METAL_ORDER_A: f64 = 0.60;
 
-const ATOM: Argument =
-    Argument { label: "atomic number", minimum: 1.0, maximum: 118.0, help: "Atomic number", ..INTEGER };
+const ATOM: Argument = Argument {
+    label: "atomic number",
+    minimum: 1.0,
+    maximum: 118.0,
+    range: "an element that the law is for",
+    help: "Atomic number",
+    ..INTEGER
+};
 const STATE: Argument = Argument {
     label: "state",
     holds: crate::declare::Holds::Selector,
@@ -40,6 +46,7 @@ pub static BOND_LENGTH: Function = Function {
             label: "radii",
             group: "radii",
             default: Some(selectors::RADII_CORDERO_2008),
+            range: "a table that the law is for",
             help: "Table of covalent radii",
             ..SELECTOR
         },
@@ -58,6 +65,7 @@ pub static BOND_LENGTH: Function = Function {
             label: "scale",
             group: "electronegativity",
             default: Some(selectors::ELECTRONEGATIVITY_PAULING),
+            range: "a Pauling scale for this law",
             help: "Electronegativities, used by the Schomaker-Stevenson law only",
             ..SELECTOR
         },
@@ -74,6 +82,7 @@ pub static BOND_LENGTH: Function = Function {
             maximum: 3.0,
             required: false,
             default_number: 1.0,
+            range: "an order that the law and the radii are for, above 0 and at most 3",
             help: "Bond order; which orders are allowed depends on the law",
             ..NUMBER
         },
@@ -92,8 +101,8 @@ pub static BOND_LENGTH: Function = Function {
     remarks: 0,
     notes: &[
         "LENGTH_RADIUS_SUM: order 1 with single-bond radii, 2 with double, 3 with triple; other orders are out of range.",
-        "LENGTH_BY_ORDER: order 1 from the single-bond radii named, 2 and 3 from Pyykkö's double and triple radii, 1.5 by \
-         LENGTH_PAULING_ORDER_1960; other orders are out of range.",
+        "LENGTH_BY_ORDER: order 1 from the single-bond radii named, 2 and 3 from Pyykkö's double and triple radii, 1.5 the \
+         mean of orders 1 and 2 (without uncertainty; benzene 1.40 Å with sp2 radii); other orders are out of range.",
         "LENGTH_SCHOMAKER_STEVENSON_1941: order 1, its own radii and a Pauling scale only; modern radii already hold the \
          shortening. Typically within 0.05 Å; fails for Si-F (1.69 against 1.56 Å).",
         "LENGTH_PAULING_ORDER_1960: orders 1 to 3 between non-metals; LENGTH_PAULING_ORDER_1947: orders 0.05 to 1 between \
@@ -168,7 +177,8 @@ pub fn bond_length(
             if order == 1.0 {
                 sum(radii)
             } else if order == 1.5 {
-                ordered(sum(radii)?, COVALENT_ORDER_A, order)
+                let (single, double) = (sum(radii)?, listed_sum(selectors::RADII_PYYKKO_DOUBLE_2009, a, b)?);
+                Ok(Quantity::without_u(0.5 * (single.value + double.value)))
             } else if order == 2.0 {
                 listed_sum(selectors::RADII_PYYKKO_DOUBLE_2009, a, b)
             } else if order == 3.0 {

@@ -54,6 +54,7 @@ pub static BOND_POLARITY: Function = Function {
             minimum: 0.0,
             required: false,
             default_number: 1.7,
+            range: "at least 0 and not below polar_from",
             help: "|delta chi| from which a bond with a metal is called ionic; not below polar_from",
             ..NUMBER
         },

@@ -75,8 +75,9 @@ pub unsafe extern "C" fn bmom_selector(name: *const c_char, name_length: i64, se
 }
 
 /// The words of a status of a function: which argument is at fault, and what is wrong with it.
-/// Given: 1 function, its name without bmom_ and _column, or an empty text [text]; 2 status. Returned: 3 text (UTF-8).
-/// Status: UNKNOWN_NAME, BUFFER_TOO_SMALL, NOT_UTF8, NULL_POINTER, NEGATIVE_COUNT.
+/// Given: 1 function, its name with or without bmom_ and _column, or an empty text [text]; 2 status. Returned: 3 text
+/// (UTF-8). Status: BUFFER_TOO_SMALL, NOT_UTF8, NULL_POINTER, NEGATIVE_COUNT.
+/// Notes: the arguments of worksheet functions are named; those of other functions are numbered, as in their comments.
 #[unsafe(no_mangle)]
 pub unsafe extern "C" fn bmom_status_message(
     function: *const c_char,
@@ -90,10 +91,10 @@ pub unsafe extern "C" fn bmom_status_message(
         // SAFETY: the caller's promise about every pointer, stated in the header.
         let (function, out) =
             unsafe { (text_in(1, function, function_length)?, TextOut::new(3, text, capacity, needed)?) };
-        let function = match function {
-            "" => None,
-            name => Some(catalogue::function(name).map_err(|failure| failure.argument(1))?),
-        };
+        let name = function.strip_prefix("bmom_").unwrap_or(function);
+        let name = name.strip_suffix("_column").unwrap_or(name);
+        // Functions that are no worksheet functions have no declared arguments: their statuses are worded by number.
+        let function = catalogue::function(name).ok();
         out.set(&catalogue::message(function, status))
     })
 }
@@ -113,7 +114,9 @@ pub unsafe extern "C" fn bmom_source(selector: i32, text: *mut c_char, capacity:
     })
 }
 
-/// What stands behind one value of a table: how well it is verified, and its citation with any dispute.
+/// What stands behind one value of a table: how well it is verified, and its citation with any dispute, as a JSON object
+/// with table, title, author, year, journal, doi, unit, value, u (in the unit that the publication prints), state, mark and
+/// note.
 /// Given: 1 table; 2 atomic_number; 3 state (BMOM_STATE_AS_LISTED where the table has none).
 /// Returned: 4 mark (BMOM_MARK_...); 5 text (UTF-8).
 /// Status: UNKNOWN_SELECTOR, WRONG_SELECTOR, UNKNOWN_ELEMENT, MISSING, NO_DATA, BUFFER_TOO_SMALL, NULL_POINTER.
@@ -148,10 +151,10 @@ pub extern "C" fn bmom_self_test(what: i32) -> i32 {
     })
 }
 
-/// A number as text: the fewest digits that read back to the same bits, with an exponent below 1e-5 and from 1e16 on; an
-/// empty text for NaN. Every host that prints with it prints the same digits.
-/// Given: 1 value. Returned: 2 text.
-/// Status: BUFFER_TOO_SMALL (24 bytes are always enough), NULL_POINTER, NEGATIVE_COUNT.
+/// A number as text: the fewest digits that read back to the same number, with an exponent below 1e-5 and from 1e16 on; an
+/// empty text for NaN, 0 for minus zero, inf for infinity. Every host that prints with it prints the same digits.
+/// Given: 1 value. Returned: 2 text (25 bytes are always enough, NUL included).
+/// Status: BUFFER_TOO_SMALL, NULL_POINTER, NEGATIVE_COUNT.
 #[unsafe(no_mangle)]
 pub unsafe extern "C" fn bmom_number_text(value: f64, text: *mut c_char, capacity: i64, needed: *mut i64) -> i32 {
     guard(|| {
@@ -160,9 +163,10 @@ pub unsafe extern "C" fn bmom_number_text(value: f64, text: *mut c_char, capacit
     })
 }
 
-/// The number in a text, with a decimal point in every locale, correctly rounded.
+/// The number in a text, with a decimal point in every locale, correctly rounded; Fortran's exponents (1.0D+02) are read.
 /// Given: 1 text. Returned: 2 value.
-/// Status: MISSING (blank), BAD_FORMAT (no number), NOT_UTF8, NULL_POINTER.
+/// Status: MISSING (blank or nan), NOT_FINITE (inf, or beyond all doubles), BAD_FORMAT (no number), NOT_UTF8, NULL_POINTER,
+/// NEGATIVE_COUNT.
 #[unsafe(no_mangle)]
 pub unsafe extern "C" fn bmom_number_read(text: *const c_char, text_length: i64, value: *mut f64) -> i32 {
     guard(|| {

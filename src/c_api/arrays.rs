@@ -25,6 +25,11 @@ pub(super) struct In<T> {
     len: usize,
 }
 
+/// A checked input array that may be left out: its pointer is then NULL. No `Option<In>`: its unset half would be read
+/// before its mark by optimised code, which memory checkers rightly ask about.
+#[derive(Clone, Copy)]
+pub(super) struct InIf<T>(In<T>);
+
 /// A checked output array.
 #[derive(Clone, Copy)]
 pub(super) struct Out<T> {
@@ -93,8 +98,8 @@ impl Arrays {
         argument: i32,
         pointer: *const T,
         len: usize,
-    ) -> Result<Option<In<T>>, Failure> {
-        if pointer.is_null() { Ok(None) } else { self.input(argument, pointer, len).map(Some) }
+    ) -> Result<InIf<T>, Failure> {
+        if pointer.is_null() { Ok(InIf(In { pointer, len: 0 })) } else { self.input(argument, pointer, len).map(InIf) }
     }
 
     /// An output array that must be there.
@@ -176,6 +181,19 @@ impl<T: Copy> In<T> {
     }
 }
 
+impl<T: Copy> InIf<T> {
+    /// The array as a slice, if it is there. Called after `no_overlap` only.
+    pub(super) fn slice<'a>(self) -> Option<&'a [T]> {
+        if self.0.pointer.is_null() { None } else { Some(self.0.slice()) }
+    }
+}
+
+impl<T> From<In<T>> for InIf<T> {
+    fn from(there: In<T>) -> Self {
+        Self(there)
+    }
+}
+
 impl<T: Copy> Out<T> {
     /// Writes one element; out of range does nothing.
     pub(super) fn set(self, i: usize, value: T) {
@@ -197,20 +215,20 @@ impl<T: Copy> Out<T> {
 #[derive(Clone, Copy)]
 pub(super) struct Quantities {
     value: In<f64>,
-    u: Option<In<f64>>,
+    u: InIf<f64>,
 }
 
 impl Quantities {
     /// The rows, in order.
     pub(super) fn rows(self) -> impl Fn(usize) -> Quantity {
         let value = self.value.slice();
-        let u = self.u.map(In::slice);
+        let u = self.u.slice();
         move |i| Quantity::new(value[i], u.map_or(f64::NAN, |u| u[i]))
     }
 
     /// The two slices.
     pub(super) fn slices<'a>(self) -> (&'a [f64], Option<&'a [f64]>) {
-        (self.value.slice(), self.u.map(In::slice))
+        (self.value.slice(), self.u.slice())
     }
 }
 

@@ -2,7 +2,7 @@
 
 use super::arrays::{Arrays, NO_QUANTITY, clean, count, rows_code, run_rows};
 use super::guard::{guard, pool};
-use super::molecules::{Ends, MoleculeArrays, Molecules};
+use super::molecules::{Ends, MoleculeArrays, Molecules, remarks_of};
 use super::settings::{bmom_settings, settings_of};
 use crate::bonds::find::{FIND_BONDS, find_bonds};
 use crate::bonds::length::BOND_LENGTH;
@@ -14,8 +14,8 @@ use crate::selectors::Selector;
 use crate::status::{Code, Failure};
 
 /// Expected length of a bond between two elements.
-/// Given: 1 radii (BMOM_RADII_...); 2 law (BMOM_LENGTH_...); 3 scale (BMOM_ELECTRONEGATIVITY_..., used by the
-/// Schomaker-Stevenson law); 4 atomic_number_a; 5 state_a; 6 atomic_number_b; 7 state_b (BMOM_STATE_...); 8 bond_order.
+/// Given: 1 radii (BMOM_RADII_...); 2 law (BMOM_LENGTH_...); 3 scale (BMOM_ELECTRONEGATIVITY_...; only the
+/// Schomaker-Stevenson law uses it, but it must be one); 4 atomic_number_a; 5 state_a; 6 atomic_number_b; 7 state_b (BMOM_STATE_...); 8 bond_order.
 /// Returned: 9 length_A, u_length_A [A].
 /// Status: UNKNOWN_SELECTOR, WRONG_SELECTOR, NOT_ALLOWED (law with these radii or this scale), MISSING, NOT_FINITE,
 /// UNKNOWN_ELEMENT, OUT_OF_RANGE (order, or element outside the law), NO_DATA, NULL_POINTER.
@@ -253,7 +253,8 @@ pub unsafe extern "C" fn bmom_ionic_character_column(
 /// capacity: room in bonds; needed: bonds found. Where the room is too small (BUFFER_TOO_SMALL) found_offsets, needed and
 /// the rows' ends are right and no bond is written. row_item: the atom at fault or that a remark is about.
 /// Status of a row: MISSING, NOT_FINITE, OUT_OF_RANGE, UNKNOWN_ELEMENT, NO_ATOMS, ATOMS_TOO_CLOSE.
-/// Remarks: IMPOSSIBLE_VALENCE, ORDERS_NOT_ASSIGNED, CHARGES_FOUND, OPEN_SHELL, BONDS_FOUND.
+/// Remarks: IMPOSSIBLE_VALENCE, ORDERS_NOT_ASSIGNED, CHARGES_FOUND, OPEN_SHELL, BONDS_FOUND, SEVERAL_FRAGMENTS.
+/// capacity 0 with NULL arrays asks for the number alone.
 /// Notes: time is linear in the atoms, up to 10^6 in one molecule. The method is our own; radii as bmom_covalent_radius.
 #[unsafe(no_mangle)]
 pub unsafe extern "C" fn bmom_find_bonds_column(
@@ -305,9 +306,9 @@ pub unsafe extern "C" fn bmom_find_bonds_column(
         offsets.set(0, 0);
         for (row, answer) in found.iter().enumerate() {
             match answer {
-                Ok((_, bonding)) => {
+                Ok((molecule, bonding)) => {
                     end += bonding.bonds.len();
-                    ends.set(row, Ok((bonding.remarks, bonding.item)));
+                    ends.set(row, Ok(remarks_of(*molecule, bonding)));
                 }
                 Err(failure) => {
                     failed += 1;
@@ -343,7 +344,7 @@ pub unsafe extern "C" fn bmom_find_bonds_column(
     })
 }
 
-/// One molecule: as bmom_find_bonds_column with one row. found_atoms has room for 2 x capacity integers, found_order and
+/// One molecule: as bmom_find_bonds_column with one row, default settings and the caller's thread. found_atoms has room for 2 x capacity integers, found_order and
 /// found_length_A for capacity numbers; needed is the number of bonds.
 #[unsafe(no_mangle)]
 pub unsafe extern "C" fn bmom_find_bonds(

@@ -2,7 +2,7 @@
 
 use super::arrays::{Arrays, NO_QUANTITY, count, rows_code, run_rows};
 use super::guard::{guard, pool};
-use super::molecules::{BondArrays, Bonds, Ends, MoleculeArrays, Molecules, one_row};
+use super::molecules::{BondArrays, Bonds, Ends, MoleculeArrays, Molecules, of_model, one_row, remarks_of};
 use super::settings::{bmom_settings, settings_of};
 use crate::charges::{self, PARTIAL_CHARGES};
 use crate::parallel::map_rows;
@@ -164,10 +164,10 @@ pub unsafe extern "C" fn bmom_length_from_dipole_column(
 /// 2 molecules: n, atom_offsets (n + 1), n_atoms, atomic_number, formal_charge [e] (NULL: derived), xyz_A [A] (3 an atom);
 /// 3 bonds: bond_offsets (n + 1; NULL: found), n_bonds, bond_atoms (2 a bond, counted from 0 within the molecule),
 /// bond_order. Returned: 4 charge_e, u_charge_e [e], an atom each at the index of its atom; u is NaN for a model without.
-/// row_item: the atom or bond at fault.
-/// Status of a row: NO_DATA (the model has no parameters for an atom), BAD_BOND, ATOMS_TOO_CLOSE, NO_ATOMS,
+/// row_item: the bond at fault where the status names argument 3, else the atom; -1: none.
+/// Status of a row: NO_DATA (1101: the model has no parameters for an atom as it is bonded), BAD_BOND, ATOMS_TOO_CLOSE, NO_ATOMS,
 /// UNKNOWN_ELEMENT, MISSING, NOT_FINITE, OUT_OF_RANGE. Of the call: NOT_ALLOWED (GIVEN), BAD_OFFSETS, ...
-/// Remarks: BONDS_FOUND, CHARGES_FOUND, IMPOSSIBLE_VALENCE, ORDERS_NOT_ASSIGNED.
+/// Remarks: BONDS_FOUND, CHARGES_FOUND, IMPOSSIBLE_VALENCE, ORDERS_NOT_ASSIGNED, SEVERAL_FRAGMENTS.
 /// Notes: PEOE is a sigma model with six sweeps; delocalised formal charge (carboxylate, nitro) is shared first. It fails
 /// for pi systems (C=O, NO2 and CN come out far too small) and for the sign of carbon monoxide.
 /// Reference: Gasteiger and Marsili, Tetrahedron 1980, 36, 3219 (parameters from memory, partly corroborated).
@@ -212,18 +212,18 @@ pub unsafe extern "C" fn bmom_partial_charges_column(
         let answers = map_rows(rows, 2 * molecules.atoms, pool, |row| -> Result<_, Failure> {
             let molecule = view.row(row)?;
             let bonding = bonds.bonding(row, molecule, BONDS_ALTERNATING)?;
-            let charges = charges::partial_charges(model, molecule, &bonding, None)?;
-            Ok((charges, bonding.remarks, bonding.item))
+            let charges = charges::partial_charges(model, molecule, &bonding, None).map_err(of_model)?;
+            Ok((charges, remarks_of(molecule, &bonding)))
         });
         let mut failed = 0;
         for (row, answer) in answers.into_iter().enumerate() {
             let end = match answer {
-                Ok((charges, remarks, item)) => {
+                Ok((charges, end)) => {
                     for (k, atom) in view.range(row).enumerate() {
                         let u = charges.u.as_ref().map_or(f64::NAN, |u| u[k]);
                         out.set(atom, Quantity::new(charges.charge[k], u));
                     }
-                    Ok((remarks, item))
+                    Ok(end)
                 }
                 Err(failure) => {
                     failed += 1;
@@ -237,7 +237,8 @@ pub unsafe extern "C" fn bmom_partial_charges_column(
     })
 }
 
-/// One molecule: as bmom_partial_charges_column with one row. bond_atoms NULL: bonds are found.
+/// One molecule: as bmom_partial_charges_column with one row, default settings and the caller's thread. bond_atoms NULL
+/// with n_bonds 0: bonds are found.
 #[unsafe(no_mangle)]
 pub unsafe extern "C" fn bmom_partial_charges(
     model: i32,
@@ -268,7 +269,7 @@ pub unsafe extern "C" fn bmom_partial_charges(
             formal_charge,
             xyz_A,
             bond_offsets,
-            if bond_offsets.is_null() { 0 } else { n_bonds },
+            n_bonds,
             bond_atoms,
             bond_order,
             charge_e,

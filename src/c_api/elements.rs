@@ -2,7 +2,7 @@
 
 use std::ffi::c_char;
 
-use super::arrays::{Arrays, In, NO_QUANTITY, count, run_rows};
+use super::arrays::{Arrays, InIf, NO_QUANTITY, count, run_rows};
 use super::guard::guard;
 use super::text::{TextOut, text_in};
 use crate::declare::Function;
@@ -145,12 +145,15 @@ unsafe fn column(function: &'static Function, look_up: LookUp, table: i32, from:
         // SAFETY: the caller's promise about every pointer, stated in the header.
         let mut arrays = unsafe { Arrays::promised() };
         let atomic_number = arrays.input(2, from.atomic_number, n)?;
-        let state = from.state.map(|state| arrays.input(3, state, n)).transpose()?;
+        let state = match from.state {
+            Some(state) => InIf::from(arrays.input(3, state, n)?),
+            None => arrays.input_if(3, std::ptr::null(), 0)?,
+        };
         let result = function.results.first().map_or(0, |result| result.number);
         let out = arrays.quantities_out(result, from.value, from.u, n)?;
         let status = arrays.output_if(0, from.row_status, n)?;
         arrays.no_overlap()?;
-        let (atomic_number, state) = (atomic_number.slice(), state.map(In::slice));
+        let (atomic_number, state) = (atomic_number.slice(), state.slice());
         run_rows(
             n,
             status,

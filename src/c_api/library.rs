@@ -28,7 +28,8 @@ impl Kind for MoleculeLibrary {
 /// 2 path [text; raw bytes on Unix]. Returned: 3 library, NULL after any failure; free it with bmom_library_free.
 /// Status: FILE_MISSING, FILE_UNREADABLE, BAD_FORMAT, UNKNOWN_SELECTOR, WRONG_SELECTOR, STOPPED, BAD_HANDLE, BUSY,
 /// NULL_POINTER. Notes: a broken record keeps its place; its row says what is wrong.
-/// Reference: CTfile Formats, the published specification (V2000 molfiles and SD files); XYZ is common practice.
+/// Reference: CTfile Formats, the published specification (molfiles and SD files, V2000 and V3000); Chemical Markup Language,
+/// Murray-Rust, Rzepa 1999; gzip (any of them, told by the content), RFC 1952; XYZ is common practice.
 #[unsafe(no_mangle)]
 pub unsafe extern "C" fn bmom_library_read(
     format: i32,
@@ -262,7 +263,14 @@ pub unsafe extern "C" fn bmom_library_arrays(
     })
 }
 
-/// The three tables of some records of a library; their columns stand in the catalogue.
+/// The three tables of some records of a library. Columns, by name (types, units and meanings stand in the catalogue under
+/// "tables"):
+/// polarity: record, compound, formula, atoms, net_charge, fragments, charge_sites, structure_kind, dipole_D, u_dipole_D,
+/// dipole_x_D, dipole_y_D, dipole_z_D, cov_xx_D2, cov_yy_D2, cov_zz_D2, cov_xy_D2, cov_xz_D2, cov_yz_D2, polarity,
+/// strongest_bond, delta_chi, negative_end, strongest_bond_charge_e, charge_model, data_version, status, detail, then data_...;
+/// bonds: record, compound, atom_a, atom_b, element_a, element_b, order, length_A, expected_A, u_expected_A, deviation_A,
+/// delta_chi, negative_end, ionic_percent, bond_charge_e, class;
+/// atoms: record, compound, atom, element, x_A, y_A, z_A, charge_e, u_charge_e, covalent_radius_A, vdw_radius_A.
 /// Given: 1 library; 2 measured (NULL: no measured dipoles are compared in this version); settings (NULL: defaults);
 /// threads; stop (NULL: none); 3 first (from 0); 4 n. Returned: 5 polarity; 6 bonds; 7 atoms: NULL where that table is not
 /// wanted; NULL is written after any failure. Free each with bmom_table_free.

@@ -1,10 +1,10 @@
 //! Columns of molecules and of their bonds: offsets checked once, then one molecule after the other.
 
-use super::arrays::{Arrays, In, Out, Quantities, clean, count};
-use crate::bonds::find::{find_bonds, given_bonds};
-use crate::molecule::{Bond, Bonding, Molecule};
+use super::arrays::{Arrays, In, InIf, Out, Quantities, clean, count};
+use crate::bonds::find::{find_bonds, given_bonds, given_lengths};
+use crate::molecule::{Bond, Bonding, Molecule, Neighbours};
 use crate::selectors::{CHARGES_GIVEN, Selector};
-use crate::status::{Code, Failure};
+use crate::status::{Code, Failure, remark};
 
 /// Pointers of a column of molecules as they come from C.
 pub(super) struct MoleculeArrays {
@@ -31,7 +31,7 @@ pub(super) struct Molecules {
     pub(super) atoms: usize,
     offsets: In<i64>,
     atomic_number: In<i32>,
-    formal_charge: Option<In<i32>>,
+    formal_charge: InIf<i32>,
     xyz: In<f64>,
 }
 
@@ -65,7 +65,7 @@ impl Molecules {
             argument: self.argument,
             offsets,
             atomic_number: self.atomic_number.slice(),
-            formal_charge: self.formal_charge.map(In::slice),
+            formal_charge: self.formal_charge.slice(),
             xyz: self.xyz.slice().as_chunks().0,
         })
     }
@@ -125,7 +125,9 @@ impl<'a> MoleculeView<'a> {
 /// A checked column of bonds, or none: then they are found.
 pub(super) struct Bonds {
     argument: i32,
-    arrays: Option<(In<i64>, In<i32>, In<f64>)>,
+    offsets: InIf<i64>,
+    atoms: In<i32>,
+    order: In<f64>,
     bonds: usize,
 }
 
@@ -136,17 +138,15 @@ impl Bonds {
     /// `NegativeCount`, `TooLarge`, `NullPointer`, `Misaligned` of the argument.
     pub(super) fn new(arrays: &mut Arrays, argument: i32, rows: usize, from: &BondArrays) -> Result<Self, Failure> {
         let bonds = count(from.n_bonds).map_err(|failure| failure.argument(argument))?;
-        if from.bond_offsets.is_null() {
-            // Bonds without their offsets are a slip, not a wish to have them found.
-            if !from.bond_atoms.is_null() || bonds > 0 {
-                return Err(Failure::of(Code::NullPointer, argument));
-            }
-            return Ok(Self { argument, arrays: None, bonds: 0 });
+        let found = from.bond_offsets.is_null();
+        // Bonds without their offsets are a slip, not a wish to have them found.
+        if found && (!from.bond_atoms.is_null() || bonds > 0) {
+            return Err(Failure::of(Code::NullPointer, argument));
         }
-        let offsets = arrays.input(argument, from.bond_offsets, if rows == 0 { 0 } else { rows + 1 })?;
+        let offsets = arrays.input_if(argument, from.bond_offsets, if rows == 0 { 0 } else { rows + 1 })?;
         let atoms = arrays.input(argument, from.bond_atoms, 2 * bonds)?;
         let order = arrays.input(argument, from.bond_order, bonds)?;
-        Ok(Self { argument, arrays: Some((offsets, atoms, order)), bonds })
+        Ok(Self { argument, offsets, atoms, order, bonds })
     }
 
     /// The column as slices.
@@ -154,11 +154,14 @@ impl Bonds {
     /// # Errors
     /// `BadOffsets` of the argument.
     pub(super) fn view<'a>(&self) -> Result<BondView<'a>, Failure> {
-        let Some((offsets, atoms, order)) = self.arrays else {
-            return Ok(BondView { argument: self.argument, given: None });
+        let given = match self.offsets.slice() {
+            Some(offsets) => {
+                let offsets = checked_offsets(offsets, self.bonds, self.argument)?;
+                Some((offsets, self.atoms.slice(), self.order.slice()))
+            }
+            None => None,
         };
-        let offsets = checked_offsets(offsets.slice(), self.bonds, self.argument)?;
-        Ok(BondView { argument: self.argument, given: Some((offsets, atoms.slice(), order.slice())) })
+        Ok(BondView { argument: self.argument, given })
     }
 }
 
@@ -204,7 +207,9 @@ impl BondView<'_> {
             }
             bonds.push(Bond { a: atom(atoms[2 * i])?, b: atom(atoms[2 * i + 1])?, order: order[i] });
         }
-        given_bonds(molecule, &bonds).map_err(|failure| failure.argument(self.argument))
+        let bonding = given_bonds(molecule, &bonds).map_err(|failure| failure.argument(self.argument))?;
+        given_lengths(molecule, &bonding).map_err(|failure| failure.argument(self.argument - 1))?;
+        Ok(bonding)
     }
 }
 
@@ -225,6 +230,7 @@ impl ChargeColumn {
         atoms: usize,
     ) -> Result<Self, Failure> {
         match (model == CHARGES_GIVEN, charge.is_null()) {
+            (false, true) if !u.is_null() => return Err(Failure::of(Code::NullPointer, argument)),
             (false, true) => return Ok(Self(None)),
             (false, false) => return Err(Failure::of(Code::NotAllowed, argument)),
             // A column without atoms needs no charges.
@@ -267,10 +273,10 @@ impl Ends {
         })
     }
 
-    /// Writes the end of a row: remarks and the atom that they are about, or the failure.
-    pub(super) fn set(self, row: usize, end: Result<(i32, Option<usize>), Failure>) {
+    /// Writes the end of a row: remarks and the atom that they are about (−1: none), or the failure.
+    pub(super) fn set(self, row: usize, end: Result<(i32, i32), Failure>) {
         let (remarks, item, status) = match end {
-            Ok((remarks, item)) => (remarks, item.and_then(|item| i32::try_from(item).ok()).unwrap_or(-1), 0),
+            Ok((remarks, item)) => (remarks, item, 0),
             Err(failure) => (0, failure.item, failure.status()),
         };
         for (out, value) in [(self.remarks, remarks), (self.item, item), (self.status, status)] {
@@ -279,6 +285,18 @@ impl Ends {
             }
         }
     }
+}
+
+/// Remarks of a row and the atom that they are about (−1: none).
+pub(super) fn remarks_of(molecule: Molecule<'_>, bonding: &Bonding) -> (i32, i32) {
+    let several = Neighbours::new(molecule.len(), &bonding.bonds).fragments().1 > 1;
+    let several = if several { remark::SEVERAL_FRAGMENTS } else { 0 };
+    (bonding.remarks | several, bonding.item.map_or(-1, |item| i32::try_from(item).unwrap_or(-1)))
+}
+
+/// Why a model has no charges: where no argument is named, the model is.
+pub(super) fn of_model(failure: Failure) -> Failure {
+    if failure.code == Code::NoData && failure.argument == 0 { failure.argument(1) } else { failure }
 }
 
 /// Writes numbers of a row side by side; the one NaN, no negative zero.

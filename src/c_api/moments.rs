@@ -1,9 +1,10 @@
 //! Entry points of the family moments.
 
-use super::arrays::{Arrays, In, NAN, NO_QUANTITY, count, rows_code, run_rows};
+use super::arrays::{Arrays, NAN, NO_QUANTITY, count, rows_code, run_rows};
 use super::guard::{guard, pool};
 use super::molecules::{
-    BondArrays, Bonds, ChargeColumn, Ends, MoleculeArrays, Molecules, checked_offsets, one_row, set_numbers,
+    BondArrays, Bonds, ChargeColumn, Ends, MoleculeArrays, Molecules, checked_offsets, of_model, one_row,
+    remarks_of, set_numbers,
 };
 use super::settings::{bmom_settings, settings_of};
 use crate::charges::partial_charges;
@@ -18,12 +19,13 @@ use crate::status::{Code, Failure, remark};
 /// (NULL: derived), xyz_A [A] (3 an atom); 4 bonds: bond_offsets (n + 1; NULL: found), n_bonds, bond_atoms (2 a bond),
 /// bond_order; 5 charge_e, u_charge_e [e] (an atom each, with BMOM_CHARGES_GIVEN and only with it).
 /// Returned: 6 dipole_D [D] (3 a row), covariance_D2 [D^2] (9 a row; NaN where not known; NULL: not wanted);
-/// 7 magnitude_D, u_magnitude_D [D]; 8 origin_A [A] (3 a row; NULL: not wanted). row_item: the atom or bond at fault.
-/// Status of a row: NO_DATA (an atom has no parameters), BAD_BOND, ATOMS_TOO_CLOSE, NO_ATOMS, UNKNOWN_ELEMENT, MISSING,
+/// 7 magnitude_D, u_magnitude_D [D]; 8 origin_A [A] (3 a row; NULL: not wanted). row_item:
+/// the bond at fault where the status names argument 4, else the atom; -1: none.
+/// Status of a row: NO_DATA (1101: the model has no parameters for an atom as it is bonded), BAD_BOND, ATOMS_TOO_CLOSE, NO_ATOMS, UNKNOWN_ELEMENT, MISSING,
 /// NOT_FINITE, OUT_OF_RANGE, NEGATIVE_UNCERTAINTY. Of the call: NOT_ALLOWED (charge_e and model), BAD_OFFSETS, ...
 /// Remarks: CHARGED (the dipole depends on the origin), BONDS_FOUND, CHARGES_FOUND, IMPOSSIBLE_VALENCE, ...
-/// Notes: the net charge is exact, so the uncertainties of the charges are conditioned on it. A model without its own
-/// uncertainty gives NaN. PEOE fails for pi systems; see bmom_partial_charges_column.
+/// Notes: the net charge is exact, so the uncertainties of the charges are conditioned on it. PEOE states no uncertainty:
+/// its covariance_D2 and u_magnitude_D are NaN; given charges have them where u_charge_e is given. PEOE fails for pi systems; see bmom_partial_charges_column.
 /// Reference: E. R. Cohen et al., Quantities, Units and Symbols in Physical Chemistry, 3rd ed., IUPAC 2007 (from memory).
 #[unsafe(no_mangle)]
 pub unsafe extern "C" fn bmom_dipole_column(
@@ -79,15 +81,20 @@ pub unsafe extern "C" fn bmom_dipole_column(
                 bonding => bonding?,
             };
             let given = charges.map(|(charge, u)| (&charge[view.range(row)], u.map(|u| &u[view.range(row)])));
-            let charges = partial_charges(model, molecule, &bonding, given)?;
+            let charges = partial_charges(model, molecule, &bonding, given).map_err(of_model)?;
             let dipole = moments::dipole(molecule, &charges, settings.position_uncertainty_a)?;
             let charged = if dipole.charged { remark::CHARGED } else { 0 };
-            Ok((dipole, bonding.remarks | charged, bonding.item))
+            let (remarks, item) = if bonding.bonds.is_empty() && molecule.len() > 1 && model == CHARGES_GIVEN {
+                (bonding.remarks, -1)
+            } else {
+                remarks_of(molecule, &bonding)
+            };
+            Ok((dipole, (remarks | charged, item)))
         });
         let mut failed = 0;
         for (row, answer) in answers.into_iter().enumerate() {
             let (dipole, end) = match answer {
-                Ok((dipole, remarks, item)) => (dipole, Ok((remarks, item))),
+                Ok((dipole, end)) => (dipole, Ok(end)),
                 Err(failure) => {
                     failed += 1;
                     (
@@ -106,7 +113,8 @@ pub unsafe extern "C" fn bmom_dipole_column(
     })
 }
 
-/// One molecule: as bmom_dipole_column with one row. bond_atoms NULL: bonds are found.
+/// One molecule: as bmom_dipole_column with one row, default settings and the caller's thread. bond_atoms NULL with n_bonds
+/// 0: bonds are found.
 #[unsafe(no_mangle)]
 pub unsafe extern "C" fn bmom_dipole(
     model: i32,
@@ -144,7 +152,7 @@ pub unsafe extern "C" fn bmom_dipole(
             formal_charge,
             xyz_A,
             bond_offsets,
-            if bond_offsets.is_null() { 0 } else { n_bonds },
+            n_bonds,
             bond_atoms,
             bond_order,
             charge_e,
@@ -249,7 +257,7 @@ pub unsafe extern "C" fn bmom_dipole_of_charges_column(
         arrays.no_overlap()?;
         let offsets = checked_offsets(offsets.slice(), atoms, 1)?;
         let (charge, u_charge) = charge.slices();
-        let (xyz, u_xyz) = (xyz.slice().as_chunks().0, u_xyz.map(In::slice));
+        let (xyz, u_xyz) = (xyz.slice().as_chunks().0, u_xyz.slice());
         let answers = map_rows(rows, atoms / 50, pool, |row| {
             let range = offsets[row] as usize..offsets[row + 1] as usize;
             moments::dipole_of_charges(
@@ -267,7 +275,7 @@ pub unsafe extern "C" fn bmom_dipole_of_charges_column(
             set_numbers(Some(vector_out), 3 * row, &dipole.vector);
             set_numbers(covariance_out, 9 * row, dipole.covariance.as_flattened());
             magnitude_out.set(row, dipole.magnitude);
-            ends.set(row, answer.map(|_| (0, None)));
+            ends.set(row, answer.map(|_| (0, -1)));
         }
         Ok(rows_code(rows, failed))
     })
@@ -276,7 +284,8 @@ pub unsafe extern "C" fn bmom_dipole_of_charges_column(
 /// Polar, non-polar or undecided, from a dipole vector and its covariance.
 /// Given: 1 limit_D [D] (usually 0.2); 2 dipole_D [D] (3), covariance_D2 [D^2] (9).
 /// Returned: 3 polarity (BMOM_POLARITY_...).
-/// Status: MISSING, NOT_FINITE, OUT_OF_RANGE, NEGATIVE_UNCERTAINTY (no covariance), NULL_POINTER.
+/// Status: MISSING (also for a covariance that is NaN, as that of PEOE dipoles is), NOT_FINITE, OUT_OF_RANGE (limit; or a
+/// matrix that is no covariance), NULL_POINTER (covariance_D2 must be given).
 /// Notes: polar where |mu| - 2 u > limit; non-polar where |mu| + 2.8 sqrt(largest eigenvalue of the covariance) <= limit
 /// (2.8 is the 95 % radius of a normal distribution in three dimensions); else undecided. One conformer is not the
 /// molecule: the polarity table also bounds what turning about bonds can do.

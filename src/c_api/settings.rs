@@ -12,13 +12,17 @@ use crate::library::settings::Settings;
 use crate::selectors::Selector;
 use crate::status::{Code, Failure};
 
-/// Settings of a run: what may be chosen stands in the catalogue under "settings". They freeze at first use and may then
-/// be shared by threads.
+/// Settings of a run. They freeze at first use and may then be shared by threads. By name (exactly as here; ranges and
+/// defaults stand in the catalogue under "settings"):
+/// choices: charge_model, electronegativity, ionic_law, covalent_radii, vdw_radii;
+/// numbers: polar_from, ionic_from (not below polar_from, checked at first use), polarity_limit_D [D],
+/// position_uncertainty_A [A];
+/// texts: name_item, carry_items.
 pub struct bmom_settings {
     _opaque: [u8; 0],
 }
 
-/// A request to stop a long call, from any thread or from a signal handler.
+/// A request to stop a long call, from any thread or from a signal handler. Once requested it stays so.
 pub struct bmom_stop {
     _opaque: [u8; 0],
 }

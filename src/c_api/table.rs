@@ -122,7 +122,8 @@ fn copy<T: Copy>(
     }
 }
 
-/// Numbers of a column of type NUMBER, NaN where a cell has no value.
+/// Numbers of a column of type NUMBER, NaN where a cell has no value. The call is OK though every cell be without one:
+/// cell_status says why.
 /// Given: 1 table; 2 column (from 0); 3 first (row, from 0); 4 n. Returned: 5 values (n); 6 cell_status (n; NULL: not
 /// wanted). Status: WRONG_TYPE, OUT_OF_RANGE, NEGATIVE_COUNT, BAD_HANDLE, NULL_POINTER, OVERLAP.
 #[unsafe(no_mangle)]

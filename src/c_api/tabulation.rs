@@ -88,7 +88,7 @@ pub unsafe extern "C" fn bmom_tabulation_open(
 /// The tables of the next records of a run.
 /// Given: 1 tabulation; stop (NULL: none); 2 max_molecules (from 1). Returned: 3 polarity; 4 bonds; 5 atoms: NULL where that
 /// table is not wanted; NULL is written after any failure. Free each with bmom_table_free.
-/// Status: END (no record is left), STOPPED (the next call goes on with the same records), FILE_MISSING, FILE_UNREADABLE,
+/// Status: END (no record is left), STOPPED (the next call, with another stop handle, goes on with the same records), FILE_MISSING, FILE_UNREADABLE,
 /// BAD_FORMAT (a file has changed), OUT_OF_RANGE, BUSY, OTHER_PROCESS, BAD_HANDLE, NULL_POINTER.
 #[unsafe(no_mangle)]
 pub unsafe extern "C" fn bmom_tabulation_next(
@@ -118,7 +118,8 @@ pub unsafe extern "C" fn bmom_tabulation_next(
     })
 }
 
-/// How far a run has come; any thread may ask at any time, also while another is in bmom_tabulation_next.
+/// How far a run has come, in whole batches; any thread may ask at any time, also while another is in
+/// bmom_tabulation_next.
 /// Given: 1 tabulation. Returned: 2 molecules_done; 3 bytes_done; 4 bytes_total (0: not known); each may be NULL.
 /// Status: BAD_HANDLE, NULL_POINTER.
 #[unsafe(no_mangle)]

@@ -39,7 +39,8 @@ pub fn evaluate(
     }
     for (name, _) in given {
         if !function.arguments.iter().any(|argument| argument.name == *name || argument.uncertainty == *name) {
-            return Err(format!("{} has no argument {name}", function.name));
+            let names: Vec<&str> = function.arguments.iter().map(|argument| argument.name).collect();
+            return Err(format!("{} has no argument {name}; it has {}", function.name, names.join(", ")));
         }
     }
     let arguments = Arguments { function, given };
@@ -131,11 +132,16 @@ impl Arguments<'_> {
     }
 }
 
-/// The choice of a group by its name, in any case, with or without the prefix that the group's names share.
+/// The choice of a group by its name, in any case, with or without the prefix that the group's names share; a unit also by
+/// its symbol.
 pub fn choice_of(group: &str, text: &str) -> Option<Selector> {
     let choices = || selectors::ALL.iter().filter(|choice| choice.group == group);
     if let Ok(selector) = Selector::by_name(text) {
         return selector.of_group(group).ok();
+    }
+    // Symbols as the titles have them: "Å", "kJ/mol", "e a0"; what follows in brackets explains them.
+    if let Some(choice) = choices().find(|choice| choice.title.split(" (").next() == Some(text.trim())) {
+        return Some(choice.selector);
     }
     let prefix = choices().next().map_or("", |choice| choice.name.split('_').next().unwrap_or(""));
     Selector::by_name(&format!("{prefix}_{}", text.trim())).ok().and_then(|selector| selector.of_group(group).ok())

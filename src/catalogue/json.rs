@@ -78,6 +78,8 @@ struct ArgumentText {
     maximum: Option<f64>,
     #[serde(skip_serializing_if = "Vec::is_empty")]
     open: Vec<&'static str>,
+    #[serde(skip_serializing_if = "str::is_empty")]
+    range: &'static str,
     required: bool,
     #[serde(skip_serializing_if = "Option::is_none")]
     default: Option<serde_json::Value>,
@@ -265,6 +267,7 @@ fn argument_text(argument: &Argument) -> ArgumentText {
         minimum: argument.minimum.is_finite().then_some(argument.minimum),
         maximum: argument.maximum.is_finite().then_some(argument.maximum),
         open,
+        range: argument.range,
         required: argument.required,
         default,
         uncertainty: argument.uncertainty,

@@ -1,6 +1,7 @@
 //! Statuses in words: which argument, which limit.
 
-use crate::declare::{Argument, Function};
+use crate::declare::{Argument, Function, Holds};
+use crate::selectors;
 use crate::status::Code;
 
 /// The words of a status of a function, such as `length_A must be above 0 Å`. Without a function, or with a status that
@@ -17,8 +18,14 @@ pub fn message(function: Option<&Function>, status: i32) -> String {
 }
 
 fn with_argument(argument: &Argument, code: Code) -> String {
-    let name = argument.name;
+    let name = &match argument.uncertainty {
+        // A vector and its matrix are checked together.
+        u if argument.shape.contains('×') && !u.is_empty() => format!("{} or {u}", argument.name),
+        _ => argument.name.to_owned(),
+    };
     match code {
+        _ if argument.holds == Holds::Block => format!("{name}: {}; the item tells which", code.text()),
+        Code::OutOfRange | Code::NotAllowed if !argument.range.is_empty() => format!("{name} must be {}", argument.range),
         Code::OutOfRange => match limits(argument) {
             Some(limits) => format!("{name} must be {limits}"),
             None => format!("{name} is outside its range"),
@@ -27,12 +34,17 @@ fn with_argument(argument: &Argument, code: Code) -> String {
         Code::NotFinite => format!("{name} or its uncertainty is infinite"),
         Code::NegativeUncertainty => format!("{} must not be negative", argument.uncertainty),
         Code::UnknownSelector | Code::WrongSelector => {
-            format!("{name}: {}; it takes a number of the group {}", code.text(), argument.group)
+            format!("{name}: {}; it takes one of BMOM_{}_...", code.text(), prefix_of(argument.group))
         }
         Code::UnknownElement => format!("{name}: there is no such element (1 to 118)"),
-        Code::NoData => format!("{name}: {}", code.text()),
         _ => format!("{name}: {}", code.text()),
     }
+}
+
+/// What the names of a group begin with.
+fn prefix_of(group: &str) -> &'static str {
+    let first = selectors::ALL.iter().find(|choice| choice.group == group);
+    first.map_or("", |choice| choice.name.split('_').next().unwrap_or(""))
 }
 
 /// The declared limits in words, with the unit.

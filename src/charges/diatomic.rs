@@ -77,7 +77,12 @@ pub static LENGTH_FROM_DIPOLE: Function = Function {
     formula: "d = mu / (e q)",
     arguments: &[
         Argument { number: 1, ..DIPOLE },
-        Argument { number: 2, help: "Charge, not 0 and of the sign of the dipole [e]", ..CHARGE },
+        Argument {
+            number: 2,
+            range: "other than 0 and of the sign of the dipole",
+            help: "Charge, not 0 and of the sign of the dipole [e]",
+            ..CHARGE
+        },
     ],
     results: &[Argument { number: 3, main: true, ..LENGTH }],
     notes: &["Inputs count as independent.", "A charge of 0 or of the other sign than the dipole is out of range."],

@@ -17,13 +17,18 @@ use crate::{Outcome, Trouble, tabulate};
 pub(crate) struct Demo {}
 
 /// Geometries of real compounds; the laboratory is invented. `demo/structures/NOTICE.txt` names their sources.
-const FILES: &[(&str, &str)] = &[
-    ("acetonitrile.mol", include_str!("demo/structures/acetonitrile.mol")),
-    ("carbon_dioxide.xyz", include_str!("demo/structures/carbon_dioxide.xyz")),
-    ("chloromethane.xyz", include_str!("demo/structures/chloromethane.xyz")),
-    ("ions_and_pairs.xyz", include_str!("demo/structures/ions_and_pairs.xyz")),
-    ("library.sdf", include_str!("demo/structures/library.sdf")),
-    ("broken/among_good.sdf", include_str!("demo/structures/broken/among_good.sdf")),
+const FILES: &[(&str, &[u8])] = &[
+    ("acetonitrile.mol", include_bytes!("demo/structures/acetonitrile.mol")),
+    ("ammonium_acetate.cml", include_bytes!("demo/structures/ammonium_acetate.cml")),
+    ("carbon_dioxide.xyz", include_bytes!("demo/structures/carbon_dioxide.xyz")),
+    ("carriers.cml", include_bytes!("demo/structures/carriers.cml")),
+    ("chloromethane.xyz", include_bytes!("demo/structures/chloromethane.xyz")),
+    ("extra_v3000.sdf", include_bytes!("demo/structures/extra_v3000.sdf")),
+    ("ions_and_pairs.xyz", include_bytes!("demo/structures/ions_and_pairs.xyz")),
+    ("library.sdf", include_bytes!("demo/structures/library.sdf")),
+    ("oxygenates.sdf.gz", include_bytes!("demo/structures/oxygenates.sdf.gz")),
+    ("sulfur_hexafluoride.cml", include_bytes!("demo/structures/sulfur_hexafluoride.cml")),
+    ("broken/among_good.sdf", include_bytes!("demo/structures/broken/among_good.sdf")),
 ];
 
 impl Demo {
@@ -71,7 +76,8 @@ fn explain(out: &mut impl Write, table: &Table) -> Result<(), Trouble> {
          - The arrow of a dipole points from - to +; \"- end\" names the negative end of the strongest bond.\n\
          - PEOE misses measured dipoles by {PEOE_RMS_D} D (rms) and says nothing of pi bonds: nitrobenzene, measured at 4.2 D, comes\n  \
            out far too small. A verdict counts that in.\n\
-         - Broken records cost themselves only: the file among_good.sdf has three, and the two good ones around them are there.\n\n\
+         - Records that cannot be computed cost themselves only: among_good.sdf has three (an unknown element, a flat drawing, one\n  \
+           without its hydrogens), and the two good ones around them are there.\n\n\
          Your own files: bondmoment tabulate FILE... --into FOLDER",
         table.rows(),
         count("polar"),

@@ -2,6 +2,7 @@
 
 use std::io::{Write, stdout};
 
+use bondmoment::catalogue::evaluate::choice_of;
 use bondmoment::catalogue::{Value, evaluate, functions};
 use bondmoment::declare::{Argument, Function, Holds, Kind};
 use bondmoment::elements;
@@ -19,7 +20,7 @@ use crate::{Layout, Outcome, Trouble, show};
 #[derive(Args)]
 #[command(after_help = "Examples:\n  bondmoment lookup covalent_radius Fe state=low_spin\n  \
     bondmoment lookup bond_polarity C Cl\n  bondmoment lookup charge_from_dipole 1.1086 1.27455 u_dipole_D=0.0003\n  \
-    bondmoment lookup convert e_bohr debye 1")]
+    bondmoment lookup convert \"e a0\" D 1")]
 pub(crate) struct Lookup {
     /// Name of the function
     function: Option<String>,
@@ -42,13 +43,16 @@ impl Lookup {
             return describe(function);
         }
         let mut given: Vec<(&str, &str)> = Vec::new();
-        let mut places = function.arguments.iter().filter(|a| a.default.is_none() && a.required);
+        let mut places = function.arguments.iter().filter(|argument| takes_place(argument));
         for value in &self.values {
             match value.split_once('=') {
                 Some(pair) => given.push(pair),
                 None => {
-                    let place =
-                        places.next().ok_or_else(|| format!("{name} takes no further value than before {value}"))?;
+                    let place = places.next().ok_or_else(|| {
+                        let names: Vec<&str> =
+                            function.arguments.iter().filter(|a| takes_place(a)).map(|a| a.name).collect();
+                        format!("{name} takes {} ({}); {value} is one too many", names.len(), names.join(", "))
+                    })?;
                     given.push((place.name, value));
                 }
             }
@@ -77,6 +81,11 @@ impl Lookup {
         }
         Ok(Outcome::AllGood)
     }
+}
+
+/// Arguments without a default take values by their place.
+fn takes_place(argument: &Argument) -> bool {
+    argument.default.is_none() && argument.required
 }
 
 enum Cell {
@@ -141,18 +150,34 @@ fn plain(function: &Function, given: &[(&str, &str)], results: &[(&'static Argum
         let default = argument.default?;
         let text = given.iter().find(|(name, _)| *name == argument.name).map(|(_, text)| *text);
         let chosen = match text {
-            Some(text) => bondmoment::catalogue::evaluate::choice_of(argument.group, text)?,
+            Some(text) => choice_of(argument.group, text)?,
             None => default,
         };
         Some((argument, chosen))
     });
     for (argument, chosen) in choices {
-        writeln!(out, "  {}: {} ({})", argument.label, chosen.title(), chosen.name())?;
+        if !enters(function, argument, given) {
+            continue;
+        }
+        writeln!(out, "  {}: {} ({})", argument.name, chosen.title(), chosen.name())?;
         if let Some(source) = value_source(function, given, chosen) {
             writeln!(out, "  value: {source}")?;
         }
     }
     Ok(())
+}
+
+/// False for a choice that the law of a bond length does not use.
+fn enters(function: &Function, argument: &Argument, given: &[(&str, &str)]) -> bool {
+    let text = |name: &str| given.iter().find(|(given, _)| *given == name).map_or("", |(_, text)| *text);
+    let law = choice_of("length_law", text("law")).unwrap_or(selectors::LENGTH_BY_ORDER);
+    let order: f64 = text("bond_order").parse().unwrap_or(1.0);
+    match argument.name {
+        _ if function.name != "bond_length" => true,
+        "scale" => law == selectors::LENGTH_SCHOMAKER_STEVENSON_1941,
+        "radii" | "state_a" | "state_b" => law != selectors::LENGTH_BY_ORDER || order < 2.0,
+        _ => true,
+    }
 }
 
 /// Why a result has no uncertainty: inputs without one, or nothing published.
@@ -177,7 +202,7 @@ fn value_source(function: &Function, given: &[(&str, &str)], table: selectors::S
     let element = text(argument.name)?;
     let z = element.parse().or_else(|_| elements::atomic_number(element)).ok()?;
     let state = match text("state") {
-        Some(state) => bondmoment::catalogue::evaluate::choice_of("state", state)?,
+        Some(state) => choice_of("state", state)?,
         None => selectors::STATE_AS_LISTED,
     };
     let source = elements::value_source(table, z, state).ok()?;

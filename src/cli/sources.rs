@@ -182,6 +182,19 @@ fn value(choice: &Choice, element: &str, state: Option<&str>) -> Result<Outcome,
             serde_json::Value::Null => {}
             serde_json::Value::String(text) if text.is_empty() => {}
             serde_json::Value::String(text) => writeln!(out, "  {name}: {text}")?,
+            // What a derived value is made of.
+            serde_json::Value::Array(parts) => {
+                for part in parts {
+                    let words: Vec<String> = part
+                        .as_object()
+                        .into_iter()
+                        .flatten()
+                        .filter(|(_, value)| !value.is_null() && value.as_str() != Some(""))
+                        .map(|(name, value)| format!("{name} {}", value.as_str().map_or(value.to_string(), str::to_owned)))
+                        .collect();
+                    writeln!(out, "  from: {}", words.join("; "))?;
+                }
+            }
             other => writeln!(out, "  {name}: {other}")?,
         }
     }

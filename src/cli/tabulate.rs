@@ -26,8 +26,8 @@ const BATCH: usize = 4096;
 
 /// Files of structures in, the polarity table out
 ///
-/// Takes XYZ files (one or many frames), molfiles and SD files (V2000), told by their content, or folders of them. A record
-/// that cannot be read or computed gets a row that says why, and the others go on.
+/// Takes XYZ files (one or many frames), molfiles and SD files (V2000 and V3000) and CML, gzip-compressed or not, told by
+/// their content, or folders of them. A record that cannot be read or computed gets a row that says why, and the others go on.
 #[derive(Args)]
 #[command(after_help = "Examples:\n  bondmoment tabulate library.sdf\n  \
     bondmoment tabulate structures/ --into results\n  \

@@ -33,7 +33,7 @@ struct Printed {
     value: f64,
     u: Option<f64>,
     state: &'static str,
-    mark: &'static str,
+    mark: String,
     note: &'static str,
 }
 
@@ -41,9 +41,14 @@ struct Printed {
 struct Derived {
     #[serde(flatten)]
     citation: Citation,
-    mark: &'static str,
+    mark: String,
     remark: &'static str,
     parts: [Printed; 2],
+}
+
+/// A mark as the tables write it, such as `from_memory`.
+fn word(mark: Selector) -> String {
+    mark.name().trim_start_matches("MARK_").to_ascii_lowercase()
 }
 
 /// The mark and the citation of the value that a table has for an element, as printed there. Mulliken's electronegativity
@@ -81,7 +86,7 @@ fn mulliken(source: &'static Source, atomic_number: i32, state: Selector) -> Res
         printed(tables::source_by_name("ELECTRON_AFFINITY")?, affinity),
     ];
     let derived =
-        Derived { citation: citation(source), mark: MARK_DERIVED.name(), remark: source.remark.as_str(), parts };
+        Derived { citation: citation(source), mark: word(MARK_DERIVED), remark: source.remark.as_str(), parts };
     written(MARK_DERIVED, &derived)
 }
 
@@ -103,7 +108,7 @@ fn printed(source: &'static Source, entry: &'static Entry) -> Printed {
         value: entry.value,
         u: (!entry.u.is_nan()).then_some(entry.u),
         state: entry.state.name(),
-        mark: entry.mark.name(),
+        mark: word(entry.mark),
         note: entry.note.as_str(),
     }
 }

@@ -11,7 +11,7 @@ use std::io::{BufRead, Result};
 
 use super::lines::{Line, Lines, quoted};
 use super::record::{Broken, Entry, Place, Record};
-use super::v2000;
+use super::{v2000, v3000};
 
 /// Most bytes of one record that are held in memory.
 const LONGEST_RECORD: usize = 256 << 20;
@@ -25,7 +25,7 @@ pub(super) struct CtfileReader<R> {
     pub lines: Lines<R>,
     file: String,
     /// Records handed out.
-    pub number: u64,
+    number: u64,
 }
 
 impl<R: BufRead> CtfileReader<R> {
@@ -95,10 +95,8 @@ fn read_record(lines: &[Line], first_line: u64, record: &mut Record) -> std::res
         return Err((line.number, "the line is longer than 1 MiB".to_owned()));
     }
     let two_dimensional = lines.get(1).is_some_and(|line| dimension(&line.text) == Some("2D"));
-    if counts.text.contains("V3000") {
-        return Err((counts.number, "V3000 is not read yet; expected a V2000 connection table".to_owned()));
-    }
-    let after = v2000::read(lines.get(3..).unwrap_or(&[]), record)?;
+    let table = lines.get(3..).unwrap_or(&[]);
+    let after = if counts.text.contains("V3000") { v3000::read(table, record)? } else { v2000::read(table, record)? };
     record.drawing = two_dimensional && flat(&record.xyz);
     record.data = data_items(lines.get(3 + after..).unwrap_or(&[]));
     Ok(())

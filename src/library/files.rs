@@ -2,13 +2,14 @@
 
 use std::collections::BTreeSet;
 use std::fs::File;
-use std::io::{Read, Seek, SeekFrom};
+use std::io::{BufRead, BufReader, Seek, SeekFrom};
 use std::path::{Path, PathBuf};
 
 use super::format::{HEAD, format_of};
-use super::reader::unreadable;
+use super::packed::Input;
+use super::reader::{Reader, Spot, head_of, unreadable};
 use super::record::Problem;
-use crate::selectors::Selector;
+use crate::selectors::{FORMAT_CML, Selector};
 use crate::status::Code;
 
 /// Deepest nesting of folders that is followed.
@@ -20,8 +21,10 @@ pub(super) struct Source {
     pub path: PathBuf,
     /// Its name in the tables.
     pub name: String,
-    /// `FORMAT_XYZ` or `FORMAT_CTFILE`.
+    /// `FORMAT_XYZ`, `FORMAT_CTFILE` or `FORMAT_CML`.
     pub format: Selector,
+    /// It is gzip-compressed.
+    pub packed: bool,
     /// Its size when the run began [bytes].
     pub size: u64,
 }
@@ -96,16 +99,40 @@ fn files_of(folder: &Path) -> Result<Vec<PathBuf>, Problem> {
 
 fn source(path: &Path, name: String, format: Selector) -> Result<Source, Problem> {
     let shown = path.display().to_string();
-    let mut head = Vec::new();
     let file = File::open(path).map_err(|error| unreadable(&shown, &error))?;
     let size = file.metadata().map_err(|error| unreadable(&shown, &error))?.len();
-    file.take(HEAD as u64).read_to_end(&mut head).map_err(|error| unreadable(&shown, &error))?;
-    let format = format_of(&name, &head, format)?;
-    Ok(Source { path: path.to_owned(), name, format, size })
+    let stream = BufReader::with_capacity(HEAD, file);
+    let mut input = Input::told(stream).map_err(|error| unreadable(&shown, &error))?;
+    let packed = input.packed_bytes().is_some();
+    let format = format_of(&name, head_of(&mut input, &name)?, format)?;
+    Ok(Source { path: path.to_owned(), name, format, packed, size })
+}
+
+/// A stream that other threads may take over.
+pub(super) type Stream = Box<dyn BufRead + Send>;
+
+/// A reader of a file that goes on at a spot.
+pub(super) fn reader_at(source: &Source, spot: Spot) -> Result<Reader<Stream>, Problem> {
+    let stream = |byte| -> Result<Stream, Problem> {
+        Ok(Box::new(BufReader::with_capacity(HEAD, open_at(source, byte)?)))
+    };
+    let again = source.packed || source.format == FORMAT_CML;
+    if !again || spot == Spot::START {
+        return Ok(Reader::at(stream(spot.byte)?, source.packed, &source.name, source.format, spot));
+    }
+    // No place within such a file can be gone to: its records are read again.
+    let mut reader = Reader::at(stream(0)?, source.packed, &source.name, source.format, Spot::START);
+    for _ in 0..spot.records {
+        if reader.next(&source.name)?.is_none() {
+            let message = format!("{}: the file has fewer records than the place to go on from", source.name);
+            return Err(Problem::new(Code::NotAllowed, message));
+        }
+    }
+    Ok(reader)
 }
 
 /// Opens a file at an offset.
-pub(super) fn open_at(source: &Source, byte: u64) -> Result<File, Problem> {
+fn open_at(source: &Source, byte: u64) -> Result<File, Problem> {
     let mut file = File::open(&source.path).map_err(|error| unreadable(&source.name, &error))?;
     if byte > 0 {
         let size = file.metadata().map_err(|error| unreadable(&source.name, &error))?.len();

@@ -3,42 +3,40 @@
 use super::lines::{decimal, integer};
 use super::record::Problem;
 use super::xyz::{atom_line, count_of};
-use crate::selectors::{FORMAT_BY_CONTENT, FORMAT_CTFILE, FORMAT_XYZ, Selector};
+use crate::selectors::{FORMAT_BY_CONTENT, FORMAT_CML, FORMAT_CTFILE, FORMAT_XYZ, Selector};
 use crate::status::Code;
 
 /// How many bytes are looked at.
 pub const HEAD: usize = 1 << 16;
 
-/// The format of a file from its first bytes (up to [`HEAD`] of them): `FORMAT_XYZ` or `FORMAT_CTFILE`. A format that the
-/// caller names is believed, unless the bytes are no text at all.
+/// What is read here, for messages.
+const KNOWN: &str = "expected an XYZ file, a molfile, an SD file or CML";
+
+/// The format of a file from its first bytes (up to [`HEAD`] of them, unpacked): `FORMAT_XYZ`, `FORMAT_CTFILE` or
+/// `FORMAT_CML`. A format that the caller names is believed, unless the bytes are no text at all.
 ///
 /// # Errors
 /// `BadFormat` with words that name what the file is, where that can be told.
 pub fn format_of(file: &str, head: &[u8], named: Selector) -> Result<Selector, Problem> {
     let bad = |what: &str| Err(Problem::new(Code::BadFormat, format!("{file}: {what}")));
     if let Some(what) = packed(head) {
-        return bad(&format!("the file is {what}, which is not read yet; unpack it first"));
+        return bad(&format!("the file is {what}, which is not read; unpack it first"));
     }
     if head.starts_with(b"\xFF\xFE") || head.starts_with(b"\xFE\xFF") {
         return bad("the file is UTF-16 text; expected UTF-8 or Latin-1");
     }
     if head.contains(&0) {
-        return bad("the file is binary; expected an XYZ file, a molfile or an SD file");
+        return bad(&format!("the file is binary; {KNOWN}"));
     }
     match named {
-        FORMAT_XYZ | FORMAT_CTFILE => return Ok(named),
+        FORMAT_XYZ | FORMAT_CTFILE | FORMAT_CML => return Ok(named),
         FORMAT_BY_CONTENT => {}
         other => {
-            return Err(match other.of_group("format") {
-                Err(failure) => Problem::new(failure.code, format!("{file}: no format has the number {}", other.0)),
-                Ok(_) => Problem::new(Code::NotAllowed, format!("{file}: {} is not read yet", other.title())),
-            });
+            let code = other.of_group("format").map_or_else(|failure| failure.code, |_| Code::Internal);
+            return Err(Problem::new(code, format!("{file}: no format has the number {}", other.0)));
         }
     }
     let text = String::from_utf8_lossy(head.strip_prefix(b"\xEF\xBB\xBF").unwrap_or(head));
-    if let Some(what) = marked_up(&text) {
-        return bad(what);
-    }
     let lines = lines_of(&text);
     if lines.iter().all(|line| line.trim().is_empty()) {
         return bad("the file is empty");
@@ -46,18 +44,23 @@ pub fn format_of(file: &str, head: &[u8], named: Selector) -> Result<Selector, P
     if is_ctfile(&lines) {
         return Ok(FORMAT_CTFILE);
     }
+    match marked_up(&text) {
+        Some(true) => return Ok(FORMAT_CML),
+        Some(false) => return bad(&format!("the file is XML or HTML and not CML; {KNOWN}")),
+        None => {}
+    }
     if is_xyz(&lines) {
         return Ok(FORMAT_XYZ);
     }
     if has_ctfile_marks(&lines) {
         return Ok(FORMAT_CTFILE);
     }
-    bad("the content is in no format that is read here; expected an XYZ file, a molfile or an SD file")
+    bad(&format!("the content is in no format that is read here; {KNOWN}"))
 }
 
 fn packed(head: &[u8]) -> Option<&'static str> {
     const MAGIC: &[(&[u8], &str)] = &[
-        (b"\x1F\x8B", "gzip-compressed"),
+        (b"\x1F\x8B", "gzip-compressed a second time"),
         (b"PK\x03\x04", "a zip archive"),
         (b"BZh", "bzip2-compressed"),
         (b"\xFD7zXZ\x00", "xz-compressed"),
@@ -66,16 +69,16 @@ fn packed(head: &[u8]) -> Option<&'static str> {
     MAGIC.iter().find(|(magic, _)| head.starts_with(magic)).map(|(_, what)| *what)
 }
 
-fn marked_up(text: &str) -> Option<&'static str> {
+/// Whether a file that begins like XML is CML; `None` for one that does not.
+fn marked_up(text: &str) -> Option<bool> {
     let start = text.trim_start();
     if !start.starts_with('<') {
         return None;
     }
-    if text.contains("<cml") || text.contains("<molecule") || text.contains(":molecule") || text.contains("/cml") {
-        return Some("the file is CML (chemical markup language), which is not read yet");
+    if ["<cml", ":cml", "/cml", "xml-cml", "<molecule", ":molecule"].iter().any(|mark| text.contains(mark)) {
+        return Some(true);
     }
-    let marked = start.starts_with("<?") || start.starts_with("<!") || start.ends_with('>');
-    marked.then_some("the file is XML or HTML; expected an XYZ file, a molfile or an SD file")
+    (start.starts_with("<?") || start.starts_with("<!") || start.ends_with('>')).then_some(false)
 }
 
 /// Lines with any newline.
@@ -147,14 +150,17 @@ mod tests {
         assert_eq!(told(b"2\n\n\n  1  0  0  0  0  0  0  0  0  0999 V2000\n"), Ok(FORMAT_CTFILE));
         assert_eq!(told(b"\n\n\n  1  0\n    0.0000    0.0000    0.0000 He  0  0\n"), Ok(FORMAT_CTFILE));
         assert_eq!(told(b"t\nno counts line\n$$$$\n"), Ok(FORMAT_CTFILE));
+        assert_eq!(told(b"<?xml version=\"1.0\"?><cml/>"), Ok(FORMAT_CML));
+        assert_eq!(told(b"\xEF\xBB\xBF\n<c:molecule id=\"m1\">"), Ok(FORMAT_CML));
+        assert_eq!(told(b"<molecule>\n\n\n  1  0  0     0  0            999 V3000\n"), Ok(FORMAT_CTFILE));
     }
 
     #[test]
     fn what_is_not_read_is_named() {
         for (head, words) in [
-            (&b"\x1F\x8B\x08rest"[..], "gzip"),
-            (b"<?xml version=\"1.0\"?><cml/>", "CML"),
-            (b"<molecule id=\"m1\">", "CML"),
+            (&b"\x1F\x8B\x08rest"[..], "gzip-compressed a second time"),
+            (b"PK\x03\x04rest", "a zip archive"),
+            (b"<?xml version=\"1.0\"?><svg/>", "not CML"),
             (b"<!DOCTYPE html><p>x</p>", "HTML"),
             (b"\xFF\xFE1\x00", "UTF-16"),
             (b"\x7FELF\x00\x00", "binary"),

@@ -9,13 +9,16 @@ use super::record::Record;
 use super::settings::Settings;
 use crate::charges::{Charges, partial_charges};
 use crate::molecule::{Bond, Bonding, Molecule};
-use crate::moments::{PEOE_RMS_D, Verdict, dipole, verdict};
+use crate::moments::{PEOE_RMS_D, Verdict, dipole, greatest_dipole, verdict};
 use crate::quantity::Quantity;
-use crate::selectors::{CHARGES_GIVEN, CHARGES_PEOE_1980, POLARITY_UNDECIDED};
-use crate::status::{Code, Failure};
+use crate::selectors::{CHARGES_GIVEN, CHARGES_PEOE_1980, POLARITY_POLAR, POLARITY_UNDECIDED};
+use crate::status::{Code, Failure, remark};
 
 /// Fragments whose dipole is told; further ones are counted.
 pub(super) const MOST_TOLD: usize = 8;
+
+/// A polar molecule that may gain more than this by turning about bonds is one conformer of several [D].
+const CHANGE_BY_TURNING_D: f64 = 0.2;
 
 /// What the models say of a record.
 pub(super) struct Computed {
@@ -196,8 +199,27 @@ fn judge(
             let polarity = POLARITY_UNDECIDED;
             Ok((Verdict { dipole, polarity, remarks: 0, bound_D: f64::NAN, by_rms: false }, false))
         }
-        judged => judged.map(|verdict| (verdict, true)),
+        judged => judged.map(|verdict| (of_one_conformer(verdict, molecule, bonding, known), true)),
     }
+}
+
+/// A polar verdict stands whatever the conformer, but its dipole is that of one: said where turning may change it.
+fn of_one_conformer(
+    mut verdict: Verdict,
+    molecule: Molecule<'_>,
+    bonding: &Bonding,
+    charges: Result<&Charges, Failure>,
+) -> Verdict {
+    if verdict.polarity != POLARITY_POLAR {
+        return verdict;
+    }
+    if let Ok(reach) = charges.and_then(|charges| greatest_dipole(molecule, bonding, charges)) {
+        if reach.hinges > 0 && reach.bound_D > verdict.dipole.magnitude.value + CHANGE_BY_TURNING_D {
+            verdict.bound_D = reach.bound_D;
+            verdict.remarks |= remark::ONE_CONFORMER;
+        }
+    }
+    verdict
 }
 
 /// The fragments in the order of their first atoms.

@@ -13,6 +13,9 @@ use crate::molecule::{Bonding, Neighbours};
 
 /// True where hydrogen atoms are missing.
 pub(super) fn lacks_hydrogens(record: &Record, bonding: &Bonding, around: &Neighbours) -> bool {
+    if record.hydrogens_left_out {
+        return true;
+    }
     // One atom says nothing of its neighbours.
     if record.atomic_number.len() < 2 {
         return false;

@@ -6,6 +6,7 @@
 use super::drawing::is_drawing;
 use super::hydrogens::lacks_hydrogens;
 use super::record::Record;
+use crate::bonds::is_metal;
 use crate::molecule::{Bonding, Neighbours};
 use crate::status::remark;
 
@@ -68,6 +69,12 @@ pub struct Kind {
     pub remarks: i32,
     /// The net charge is not 0 and was derived from the bonds, not stated.
     pub charge_derived: bool,
+    /// The number of electrons is odd; false where the charge of a metal complex leaves that open.
+    pub odd_electrons: bool,
+    /// A transition metal with bonds, and no charges stated: coordinates do not tell the charge of such a complex.
+    pub untold_complex: bool,
+    /// Two or three atoms with an odd number of electrons and no charges stated: as well an ion as a radical.
+    pub radical_or_ion: bool,
 }
 
 /// Tells the kind of a record from what it states and from its bonds.
@@ -77,9 +84,13 @@ pub fn kind_of(record: &Record, bonding: &Bonding) -> Kind {
     let (fragment, fragments) = around.fragments();
     let charge = |atom: usize| bonding.formal_charge.get(atom).copied().map_or(0, i64::from);
     let net_charge: i64 = (0..atoms).map(charge).sum();
-    let (charge_sites, separated) = charge_sites(atoms, &around, &charge, &fragment, fragments);
+    let stated = record.formal_charge.is_some();
+    let chosen = if stated { vec![false; atoms] } else { chosen_by_bonding(record, bonding) };
+    let untold_complex = !stated && (0..atoms).any(|i| is_transition(record, i) && around.degree(i) > 0);
+    let (charge_sites, separated) = charge_sites(atoms, &around, &charge, &chosen, &fragment, fragments);
 
-    let mut remarks = bonding.remarks;
+    // Of the search's remarks this one is decided anew: it does not know what the record states.
+    let mut remarks = bonding.remarks & !remark::OPEN_SHELL;
     if fragments > 1 {
         remarks |= remark::SEVERAL_FRAGMENTS;
     }
@@ -87,8 +98,8 @@ pub fn kind_of(record: &Record, bonding: &Bonding) -> Kind {
         remarks |= remark::CHARGE_SITES;
     }
     let protons: i64 = record.atomic_number.iter().map(|&z| i64::from(z)).sum();
-    let odd = (protons - net_charge).rem_euclid(2) == 1;
-    let open_shell = odd || record.radicals.iter().any(|&(_, code)| code > 1);
+    let odd_electrons = (protons - net_charge).rem_euclid(2) == 1 && !(untold_complex && net_charge != 0);
+    let open_shell = odd_electrons || record.radicals.iter().any(|&(_, code)| code > 1);
     if open_shell {
         remarks |= remark::OPEN_SHELL;
     }
@@ -111,16 +122,51 @@ pub fn kind_of(record: &Record, bonding: &Bonding) -> Kind {
     } else {
         StructureKind::Molecule
     };
-    let charge_derived = net_charge != 0 && record.formal_charge.is_none();
-    Kind { structure, drawing, lacks_hydrogens, fragment, fragments, net_charge, charge_sites, remarks, charge_derived }
+    let small = (2..=3).contains(&atoms) && fragments == 1;
+    Kind {
+        structure,
+        drawing,
+        lacks_hydrogens,
+        fragment,
+        fragments,
+        net_charge,
+        charge_sites,
+        remarks,
+        charge_derived: net_charge != 0 && !stated,
+        odd_electrons,
+        untold_complex,
+        radical_or_ion: small && !stated && odd_electrons && net_charge == 0 && !untold_complex,
+    }
+}
+
+/// Transition metals, lanthanoids and actinoids: their bonds do not tell their charge.
+fn is_transition(record: &Record, atom: usize) -> bool {
+    matches!(record.atomic_number.get(atom), Some(21..=29 | 39..=47 | 57..=79 | 89..=112))
+}
+
+/// Atoms whose formal charges were chosen to balance a metal, not found: transition metals, and both ends of every bond
+/// without order that a metal has (bridging halogen, dative bonds).
+fn chosen_by_bonding(record: &Record, bonding: &Bonding) -> Vec<bool> {
+    let atoms = record.atomic_number.len();
+    let mut chosen: Vec<bool> = (0..atoms).map(|atom| is_transition(record, atom)).collect();
+    let metal = |atom: u32| record.atomic_number.get(atom as usize).is_some_and(|&z| is_metal(z));
+    for bond in bonding.bonds.iter().filter(|bond| bond.order == 0.0 && (metal(bond.a) || metal(bond.b))) {
+        for atom in [bond.a, bond.b] {
+            if let Some(slot) = chosen.get_mut(atom as usize) {
+                *slot = true;
+            }
+        }
+    }
+    chosen
 }
 
 /// Number of charged groups with a net charge, a group being charged atoms bonded to one another; and whether some
-/// neutral fragment has such groups.
+/// neutral fragment has such groups. Groups with an atom whose charge was chosen for it do not count.
 fn charge_sites(
     atoms: usize,
     around: &Neighbours,
     charge: &dyn Fn(usize) -> i64,
+    chosen: &[bool],
     fragment: &[u32],
     fragments: usize,
 ) -> (usize, bool) {
@@ -132,7 +178,7 @@ fn charge_sites(
         if charge(first) == 0 || seen.get(first).copied().unwrap_or(true) {
             continue;
         }
-        let mut sum = 0;
+        let (mut sum, mut told) = (0, true);
         stack.push(first);
         while let Some(atom) = stack.pop() {
             match seen.get_mut(atom) {
@@ -140,9 +186,10 @@ fn charge_sites(
                 _ => continue,
             }
             sum += charge(atom);
+            told &= chosen.get(atom) != Some(&true);
             stack.extend(around.of(atom).iter().map(|&(other, _)| other as usize).filter(|&other| charge(other) != 0));
         }
-        if sum != 0 {
+        if sum != 0 && told {
             sites += 1;
             if let Some((count, net)) = fragment.get(first).and_then(|&f| of_fragment.get_mut(f as usize)) {
                 *count += 1;

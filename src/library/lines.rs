@@ -1,7 +1,7 @@
 //! Lines of a stream: any newline, bounded memory, and the place of each one.
 
 use std::collections::VecDeque;
-use std::io::{BufRead, Result};
+use std::io::{BufRead, Error, Result};
 
 /// Longest line that is kept whole; what lies beyond is left out.
 const LONGEST_LINE: usize = 1 << 20;
@@ -30,31 +30,40 @@ pub(super) struct Lines<R> {
     offset: u64,
     number: u64,
     ended: bool,
+    /// An error behind the lines that are ahead: it counts when they are taken.
+    failed: Option<Error>,
 }
 
 impl<R: BufRead> Lines<R> {
     /// From the beginning of a stream, or from an offset where a line begins that has this number.
     pub fn new(input: R, offset: u64, number: u64) -> Self {
-        Self { input, ahead: VecDeque::new(), offset, number, ended: false }
+        Self { input, ahead: VecDeque::new(), offset, number, ended: false, failed: None }
     }
 
     /// Takes the next line; `None` at the end.
     pub fn take(&mut self) -> Result<Option<Line>> {
         match self.ahead.pop_front() {
             Some(line) => Ok(Some(line)),
-            None => self.read(),
+            None => match self.failed.take() {
+                Some(error) => Err(error),
+                None => self.read(),
+            },
         }
     }
 
-    /// The line `n` places ahead (0: the next one) without taking it.
-    pub fn peek(&mut self, n: usize) -> Result<Option<&Line>> {
+    /// The line `n` places ahead (0: the next one) without taking it; `None` at the end, or where reading on fails.
+    pub fn peek(&mut self, n: usize) -> Option<&Line> {
         while self.ahead.len() <= n {
-            match self.read()? {
-                Some(line) => self.ahead.push_back(line),
-                None => return Ok(None),
+            if self.failed.is_some() {
+                return None;
+            }
+            match self.read() {
+                Ok(Some(line)) => self.ahead.push_back(line),
+                Ok(None) => return None,
+                Err(error) => self.failed = Some(error),
             }
         }
-        Ok(self.ahead.get(n))
+        self.ahead.get(n)
     }
 
     /// Puts a line back before the others.
@@ -65,6 +74,11 @@ impl<R: BufRead> Lines<R> {
     /// Offset and number of the next line.
     pub fn place(&self) -> (u64, u64) {
         self.ahead.front().map_or((self.offset, self.number), |line| (line.start, line.number))
+    }
+
+    /// Where the lines come from.
+    pub fn input(&self) -> &R {
+        &self.input
     }
 
     fn read(&mut self) -> Result<Option<Line>> {
@@ -96,11 +110,18 @@ impl<R: BufRead> Lines<R> {
             self.input.consume(used);
             self.offset += used as u64;
             if ended_by == Some(b'\r') {
-                let next = match self.input.fill_buf() {
-                    Err(error) if error.kind() == std::io::ErrorKind::Interrupted => self.input.fill_buf()?,
-                    buffer => buffer?,
+                let newline = loop {
+                    match self.input.fill_buf() {
+                        Err(error) if error.kind() == std::io::ErrorKind::Interrupted => {}
+                        Err(error) => {
+                            // The line is whole; the error is the next one's.
+                            self.failed = Some(error);
+                            break false;
+                        }
+                        Ok(next) => break next.first() == Some(&b'\n'),
+                    }
                 };
-                if next.first() == Some(&b'\n') {
+                if newline {
                     self.input.consume(1);
                     self.offset += 1;
                 }

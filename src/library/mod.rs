@@ -7,8 +7,11 @@
 //! - [`table`] is the typed table that leaves the library, [`write`] writes it as CSV or JSON lines, [`settings`] holds
 //!   what a run can be told.
 
+mod cml;
+mod cml_molecule;
 mod ctfile;
 mod drawing;
+mod expected;
 mod files;
 pub mod format;
 pub mod formula;
@@ -16,7 +19,9 @@ mod fragments;
 mod hydrogens;
 pub mod kinds;
 mod lines;
+mod markup;
 pub mod molecule_library;
+mod packed;
 pub mod polarity_table;
 mod reader;
 pub mod record;
@@ -27,6 +32,7 @@ mod strongest;
 pub mod table;
 pub mod tabulation;
 mod v2000;
+mod v3000;
 pub mod write;
 mod xyz;
 

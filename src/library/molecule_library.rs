@@ -1,10 +1,9 @@
 //! Records held in memory: read from a file or a text, or made from arrays.
 
-use std::io::BufReader;
 use std::path::Path;
 use std::sync::atomic::{AtomicBool, Ordering};
 
-use super::files::{open_at, sources};
+use super::files::{reader_at, sources};
 use super::polarity_table::{Tables, Task, Wanted, stopped, tables_of};
 use super::reader::{Reader, Spot};
 use super::record::{Entry, Place, Problem, Record};
@@ -54,9 +53,7 @@ impl MoleculeLibrary {
         }
         let mut entries = Vec::new();
         for source in &sources {
-            let input = BufReader::new(open_at(source, 0)?);
-            let reader = Reader::at(input, &source.name, source.format, Spot::START);
-            take_all(reader, &source.name, stop, &mut entries)?;
+            take_all(reader_at(source, Spot::START)?, &source.name, stop, &mut entries)?;
         }
         Self::with_bonds(entries, threads, stop)
     }

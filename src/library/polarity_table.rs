@@ -65,14 +65,14 @@ pub static BONDS_COLUMNS: &[ColumnKind] = &[
     column("element_b", TYPE_TEXT, "", "Symbol of the second atom"),
     column("order", TYPE_NUMBER, "", "Bond order; 1.5 aromatic, 0 not assigned"),
     column("length_A", TYPE_NUMBER, "Å", "Distance of the two atoms [Å]"),
-    column("expected_A", TYPE_NUMBER, "Å", "Length expected from covalent radii and order [Å]"),
+    column("expected_A", TYPE_NUMBER, "Å", "Length expected from covalent radii and order; not for ionic bonds [Å]"),
     column("u_expected_A", TYPE_NUMBER, "Å", "Its standard uncertainty (k = 1) [Å]"),
     column("deviation_A", TYPE_NUMBER, "Å", "Length less expected length [Å]"),
     column("delta_chi", TYPE_NUMBER, "", "Electronegativity of atom b less that of atom a"),
     column("negative_end", TYPE_TEXT, "", "The more electronegative atom; empty for like atoms"),
     column("ionic_percent", TYPE_NUMBER, "%", "Ionic character by the law chosen [%]"),
     column("bond_charge_e", TYPE_NUMBER, "e", "Charge of atom a drawn by atom b along the bond, by the charge model [e]"),
-    column("class", TYPE_TEXT, "", "non-polar, polar or ionic"),
+    column("class", TYPE_TEXT, "", "non-polar, polar or ionic; expected_A is not for ionic bonds"),
 ];
 
 /// Columns of the table of atoms.

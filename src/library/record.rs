@@ -24,7 +24,8 @@ impl Place {
 /// Stereo as the file states it, kept unread.
 #[derive(Clone, Debug, Default, PartialEq, Eq)]
 pub struct StatedStereo {
-    /// (bond, wedge code) for every bond whose code is not 0; 0-based bonds in the order of the file.
+    /// (bond, wedge code) for every bond whose code is not 0; 0-based bonds in the order of the file. The code is that of
+    /// V2000 tables whatever the format: 1 up, 6 down, 4 either, 3 cis or trans.
     pub wedges: Vec<(u32, i32)>,
     /// (atom, parity code) for every atom whose code is not 0; 0-based atoms.
     pub parities: Vec<(u32, i32)>,
@@ -54,7 +55,8 @@ pub struct Record {
     pub charge_e: Option<GivenCharges>,
     /// Data items as (name, value) in the order of the file; a value may have several lines.
     pub data: Vec<(String, String)>,
-    /// The file calls the record two-dimensional, and all atoms lie in one plane z = constant.
+    /// The file calls the record two-dimensional or gives no coordinates in space, and all atoms lie in one plane
+    /// z = constant.
     pub drawing: bool,
     /// Stereo, unread.
     pub stereo: StatedStereo,
@@ -62,10 +64,12 @@ pub struct Record {
     pub isotopes: Vec<(u32, i32)>,
     /// (atom, difference of the mass number from the element's own in the file's sense) where that is what is stated.
     pub mass_differences: Vec<(u32, i32)>,
-    /// (atom, 1 singlet, 2 doublet, 3 triplet) of stated radicals.
+    /// (atom, spin multiplicity: 1 singlet, 2 doublet, 3 triplet) of stated radicals.
     pub radicals: Vec<(u32, i32)>,
     /// (atom, valence) where the file states how many bonds an atom has, hydrogens left out included.
     pub valences: Vec<(u32, i32)>,
+    /// The file states that atoms carry more hydrogen atoms than it lists.
+    pub hydrogens_left_out: bool,
 }
 
 impl Record {
@@ -78,6 +82,17 @@ impl Record {
     pub fn item(&self, name: &str) -> Option<&str> {
         self.data.iter().find(|(item, _)| item == name).map(|(_, value)| value.as_str())
     }
+}
+
+/// The later of two bonds that join the same atoms: of the first such pair of atoms.
+pub(super) fn bonded_twice(bonds: &[Bond]) -> Option<usize> {
+    let mut pairs: Vec<(u32, u32, usize)> =
+        bonds.iter().enumerate().map(|(i, bond)| (bond.a.min(bond.b), bond.a.max(bond.b), i)).collect();
+    pairs.sort_unstable();
+    pairs.windows(2).find_map(|pair| match pair {
+        [one, two] if (one.0, one.1) == (two.0, two.1) => Some(two.2),
+        _ => None,
+    })
 }
 
 /// A record that could not be read.

@@ -1,21 +1,22 @@
 //! The rows of one record: what is computed from it, and in which words it is told.
 
+use super::expected::{expected_lengths, length_of, states_of};
 use super::formula::{atom_label, hill_formula};
 use super::fragments::{Computed, compute};
 use super::kinds::{Kind, kind_of};
 use super::polarity_table::{Tables, Wanted};
 use super::record::{Broken, Entry, Record};
-use super::remarks::detail;
+use super::remarks::Words;
 use super::settings::Settings;
 use super::strongest::{polarity_of, shown_order, strongest_bond};
 use super::table::Cell;
 use crate::bonds::find::{find_bonds, given_bonds};
-use crate::bonds::{bond_length, ionic_character};
+use crate::bonds::ionic_character;
 use crate::catalogue::DATA_VERSION;
 use crate::elements::{covalent_radius, symbol, vdw_radius};
-use crate::molecule::{Bond, Bonding};
+use crate::molecule::Bonding;
 use crate::quantity::Quantity;
-use crate::selectors::{self, Selector};
+use crate::selectors;
 use crate::status::{Code, Failure};
 
 /// The bonds of a record: as stated, else found from the coordinates.
@@ -132,8 +133,9 @@ impl Row<'_> {
     fn polarity(&self, bonding: &Bonding, kind: &Kind, computed: &Computed, tables: &mut Tables) {
         let record = self.record;
         let formula = hill_formula(&record.atomic_number);
-        let strongest = strongest_bond(record, bonding, self.settings);
-        let detail = detail(record, bonding, kind, computed, strongest.as_ref().ok(), self.settings);
+        let (strongest, lacking) = strongest_bond(record, bonding, self.settings);
+        let words = Words { record, bonding, kind, computed, settings: self.settings };
+        let detail = words.detail(strongest.as_ref().ok(), &lacking);
         let net_charge = if kind.lacks_hydrogens && record.formal_charge.is_none() {
             Cell::None(Code::HydrogensMissing)
         } else {
@@ -219,11 +221,12 @@ impl Row<'_> {
     fn bonds(&self, bonding: &Bonding, kind: &Kind, computed: &Computed, tables: &mut Tables) {
         let record = self.record;
         let states = states_of(record, bonding, self.settings.covalent_radii);
+        let expected_lengths = expected_lengths(record, bonding, &states, self.settings);
         for (i, &bond) in bonding.bonds.iter().enumerate() {
             let z = |atom: u32| record.atomic_number.get(atom as usize).copied().unwrap_or(0);
             let order = shown_order(bond, bonding.aromatic.get(i).copied().unwrap_or(false));
             let length = if kind.drawing { Err(Code::FlatDrawing) } else { length_of(record, bond) };
-            let expected = expected_length(record, &states, bond, order, self.settings).map_err(|failure| failure.code);
+            let expected = expected_lengths.get(i).copied().unwrap_or(Err(Code::NoData));
             let deviation = match (length, expected) {
                 (Ok(length), Ok(expected)) => Ok(length - expected.value),
                 (Err(code), _) | (_, Err(code)) => Err(code),
@@ -286,63 +289,4 @@ impl Row<'_> {
             ]);
         }
     }
-}
-
-fn length_of(record: &Record, bond: Bond) -> Result<f64, Code> {
-    let point = |atom: u32| record.xyz.get(atom as usize).ok_or(Code::Missing);
-    let (a, b) = (point(bond.a)?, point(bond.b)?);
-    let d = [a[0] - b[0], a[1] - b[1], a[2] - b[2]];
-    Ok((d[0] * d[0] + d[1] * d[1] + d[2] * d[2]).sqrt())
-}
-
-fn expected_length(
-    record: &Record,
-    states: &[Selector],
-    bond: Bond,
-    order: f64,
-    settings: &Settings,
-) -> Result<Quantity, Failure> {
-    if order == 0.0 {
-        return Err(Failure::new(Code::NoData));
-    }
-    let z = |atom: u32| record.atomic_number.get(atom as usize).copied().unwrap_or(0);
-    let state = |atom: u32| states.get(atom as usize).copied().unwrap_or(selectors::STATE_AS_LISTED);
-    bond_length(
-        settings.covalent_radii,
-        selectors::LENGTH_BY_ORDER,
-        settings.electronegativity,
-        z(bond.a),
-        state(bond.a),
-        z(bond.b),
-        state(bond.b),
-        order,
-    )
-}
-
-/// The hybridization that picks a carbon radius from Cordero's table: sp with a triple or two double bonds, sp2 with one
-/// double or aromatic bond, else sp3. Other tables and elements have one radius.
-fn states_of(record: &Record, bonding: &Bonding, radii: Selector) -> Vec<Selector> {
-    if radii != selectors::RADII_CORDERO_2008 {
-        return vec![selectors::STATE_AS_LISTED; record.atomic_number.len()];
-    }
-    let mut unsaturation = vec![0_u32; record.atomic_number.len()];
-    for bond in &bonding.bonds {
-        let more = match bond.order {
-            order if order >= 3.0 => 2,
-            order if order > 1.0 => 1,
-            _ => 0,
-        };
-        for atom in [bond.a, bond.b] {
-            if let Some(sum) = unsaturation.get_mut(atom as usize) {
-                *sum += more;
-            }
-        }
-    }
-    let state = |(&z, &sum): (&i32, &u32)| match (z, sum) {
-        (6, 0) => selectors::STATE_SP3,
-        (6, 1) => selectors::STATE_SP2,
-        (6, _) => selectors::STATE_SP,
-        _ => selectors::STATE_AS_LISTED,
-    };
-    record.atomic_number.iter().zip(&unsaturation).map(state).collect()
 }

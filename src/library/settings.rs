@@ -87,7 +87,7 @@ pub static SETTINGS: &[Setting] = &[
         name: "position_uncertainty_A",
         holds: Holds::Number(0.0, 0.0, 100.0),
         unit: "Å",
-        help: "Standard uncertainty of every coordinate [Å]",
+        help: "Standard uncertainty of coordinates [Å]; used with charges that have uncertainty",
     },
     Setting {
         name: "name_item",

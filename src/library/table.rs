@@ -263,7 +263,8 @@ pub fn number_read(text: &str) -> Result<f64, Failure> {
     if bare.eq_ignore_ascii_case("inf") || bare.eq_ignore_ascii_case("infinity") {
         return Err(Failure::new(Code::NotFinite));
     }
-    match text.parse::<f64>() {
+    // Fortran's exponents; no other d can stand in a number.
+    match text.replace(['d', 'D'], "e").parse::<f64>() {
         Ok(value) if value.is_finite() => Ok(value + 0.0),
         Ok(_) => Err(Failure::new(Code::NotFinite)),
         Err(_) => Err(Failure::new(Code::BadFormat)),

@@ -1,14 +1,13 @@
 //! A run through files of any size: records are read one after another, computed in batches on several threads, and come
 //! out in the order of the files.
 
-use std::fs::File;
-use std::io::{BufRead, BufReader, Cursor, Read};
+use std::io::{BufReader, Cursor, Read};
 use std::path::PathBuf;
 use std::sync::Arc;
 use std::sync::atomic::{AtomicBool, AtomicU64, Ordering};
 
 pub use super::files::LeftOut;
-use super::files::{Source, open_at, sources};
+use super::files::{Source, Stream, reader_at, sources};
 use super::format::HEAD;
 use super::polarity_table::{Tables, Task, Wanted, stopped, tables_of};
 use super::reader::{Reader, Spot, unreadable};
@@ -36,7 +35,7 @@ impl Progress {
         self.records.load(Ordering::Relaxed)
     }
 
-    /// Bytes of the files whose records are computed.
+    /// Bytes of the files whose records are computed; of a packed file the packed ones.
     pub fn bytes_done(&self) -> u64 {
         self.bytes.load(Ordering::Relaxed)
     }
@@ -46,8 +45,6 @@ impl Progress {
         self.bytes_total.load(Ordering::Relaxed)
     }
 }
-
-type Stream = Box<dyn BufRead + Send>;
 
 /// The place in a run: records before it are done.
 #[derive(Clone, Copy, Debug, PartialEq, Eq)]
@@ -222,10 +219,10 @@ impl Tabulation {
                 self.reader = Some(self.open_file(Spot::START)?);
             }
             let Some(reader) = &mut self.reader else { break };
-            let from = reader.spot().byte;
+            let from = reader.text_bytes();
             match reader.next(&self.name)? {
                 Some(entry) => {
-                    held += entry.atoms() as u64 + 1 + reader.spot().byte.saturating_sub(from) / 64;
+                    held += entry.atoms() as u64 + 1 + reader.text_bytes().saturating_sub(from) / 64;
                     self.read += 1;
                     self.pending.push(entry);
                 }
@@ -243,9 +240,7 @@ impl Tabulation {
             return Err(Problem::new(Code::Internal, Code::Internal.text()));
         };
         self.name = source.name.clone();
-        let file: File = open_at(source, spot.byte)?;
-        let stream: Stream = Box::new(BufReader::with_capacity(HEAD, file));
-        Ok(Reader::at(stream, &source.name, source.format, spot))
+        reader_at(source, spot)
     }
 
     fn finish_batch(&mut self, position: Position) {

@@ -6,7 +6,7 @@
 
 use super::ctfile::{Fault, expected};
 use super::lines::{Line, decimal, integer, quoted};
-use super::record::Record;
+use super::record::{Record, bonded_twice};
 use super::xyz::LARGEST_COORDINATE_A;
 use crate::molecule::Bond;
 use crate::tables::element_by_text;
@@ -173,15 +173,9 @@ fn bond(line: &Line, number: usize, bonds: usize, atoms: usize, record: &mut Rec
 
 /// Refuses a pair of atoms that is bonded twice.
 fn repeated(bonds: &[Bond], lines: &[Line], first: usize) -> Result<(), Fault> {
-    let mut pairs: Vec<(u32, u32, usize)> =
-        bonds.iter().enumerate().map(|(i, bond)| (bond.a.min(bond.b), bond.a.max(bond.b), i)).collect();
-    pairs.sort_unstable();
-    let twice = pairs.windows(2).find_map(|pair| match pair {
-        [one, two] if (one.0, one.1) == (two.0, two.1) => Some(*two),
-        _ => None,
-    });
-    if let Some((a, b, bond)) = twice {
+    if let Some(bond) = bonded_twice(bonds) {
         let line = lines.get(first + bond).map_or(0, |line| line.number);
+        let (a, b) = bonds.get(bond).map_or((0, 0), |bond| (bond.a.min(bond.b), bond.a.max(bond.b)));
         return Err((line, format!("atoms {} and {} are bonded twice", a + 1, b + 1)));
     }
     Ok(())

@@ -2,8 +2,8 @@
 //!
 //! There is no written standard; what is read here is common practice. An atom line is an element (symbol in any case,
 //! symbol with a label number, or atomic number; D and T are hydrogen) and three coordinates in Å; further columns are
-//! left unread. Blank lines may stand between frames. A comment is never an instruction: a short plain one is the title,
-//! any other is kept as the data item `comment`. Charges and bonds are not stated.
+//! left unread. Blank lines may stand between frames. A comment is never an instruction: it is the title, unless it holds
+//! nothing but numbers and key=value pairs; such a one is kept as the data item `comment`. Charges and bonds are not stated.
 //!
 //! A frame that cannot be read costs itself: reading goes on at the next place that looks like a frame.
 
@@ -17,7 +17,8 @@ use crate::tables::element_by_text;
 pub const MOST_ATOMS: i64 = 50_000_000;
 /// Largest coordinate [Å].
 pub(super) const LARGEST_COORDINATE_A: f64 = 1e9;
-const LONGEST_TITLE: usize = 80;
+/// Longest title [characters]; of a longer comment the beginning is the title and the whole a data item.
+const LONGEST_TITLE: usize = 200;
 
 /// Reads frames one by one.
 #[derive(Debug)]
@@ -25,7 +26,7 @@ pub(super) struct XyzReader<R> {
     pub lines: Lines<R>,
     file: String,
     /// Frames handed out.
-    pub number: u64,
+    number: u64,
 }
 
 impl<R: BufRead> XyzReader<R> {
@@ -89,7 +90,7 @@ impl<R: BufRead> XyzReader<R> {
         }
         // One atom line more: the count is wrong, and nobody can say which atoms are meant.
         let more = |line: &&Line| count_of(&line.text).is_none() && atom_line(&line.text).is_ok();
-        if let Some(line) = self.lines.peek(0)?.filter(more) {
+        if let Some(line) = self.lines.peek(0).filter(more) {
             let message = format!("more atom lines follow than the {count} stated in line {}", count_line.number);
             return Ok(Err((line.number, message)));
         }
@@ -98,9 +99,9 @@ impl<R: BufRead> XyzReader<R> {
 
     /// Leaves lines out up to a count that is followed, after its comment, by an atom.
     fn go_to_next_frame(&mut self) -> Result<()> {
-        while let Some(line) = self.lines.peek(0)? {
+        while let Some(line) = self.lines.peek(0) {
             let counts = count_of(&line.text).is_some_and(|count| (1..=MOST_ATOMS).contains(&count));
-            if counts && self.lines.peek(2)?.is_some_and(|third| atom_line(&third.text).is_ok()) {
+            if counts && self.lines.peek(2).is_some_and(|third| atom_line(&third.text).is_ok()) {
                 return Ok(());
             }
             self.lines.take()?;
@@ -155,14 +156,65 @@ fn take_comment(comment: &Line, record: &mut Record) {
     if text.is_empty() {
         return;
     }
-    let short = text.chars().count() <= LONGEST_TITLE && !comment.cut;
-    let plain = !text.contains(['=', '"', '\t']) && !text.chars().any(char::is_control);
-    let first_is_number = text.split_whitespace().next().is_some_and(|word| decimal(word).is_some());
-    if short && plain && !first_is_number && atom_line(text).is_err() {
-        record.title = text.to_owned();
-    } else {
+    let controls = text.chars().any(|c| c.is_control() && c != '\t');
+    let title = !controls && !values_only(text) && atom_line(text).is_err();
+    if title {
+        let plain = text.replace('\t', " ");
+        match plain.char_indices().nth(LONGEST_TITLE - 1) {
+            Some((at, last)) if at + last.len_utf8() < plain.len() => {
+                record.title = plain.get(..at).unwrap_or("").trim_end().to_owned() + "…";
+            }
+            _ => record.title = plain,
+        }
+    }
+    if !title || record.title.ends_with('…') {
         record.data.push(("comment".to_owned(), text.to_owned()));
     }
+}
+
+/// Nothing but numbers and key=value pairs, a value standing in quotes where it has blanks.
+fn values_only(text: &str) -> bool {
+    let mut words: Vec<String> = Vec::new();
+    let mut quote = None;
+    let mut open = false;
+    for c in text.chars() {
+        match quote {
+            Some(end) if c == end => quote = None,
+            Some(_) => {}
+            None if matches!(c, '"' | '\'') => quote = Some(c),
+            None if c.is_whitespace() || matches!(c, ',' | ';') => {
+                open = false;
+                continue;
+            }
+            None => {}
+        }
+        if !open {
+            words.push(String::new());
+            open = true;
+        }
+        if let Some(word) = words.last_mut() {
+            word.push(c);
+        }
+    }
+    let mut rest = &words[..];
+    while let Some((word, after)) = rest.split_first() {
+        rest = match (word.split_once('='), after) {
+            (None, _) if decimal(word).is_some() => after,
+            // `key = value`, `key =value`
+            (None, [sign, _, after @ ..]) if sign == "=" => after,
+            (None, [value, after @ ..]) if value.starts_with('=') && value.len() > 1 => after,
+            // `key= value`
+            (Some((key, "")), [_, after @ ..]) if is_key(key) => after,
+            (Some((key, value)), _) if is_key(key) && !value.is_empty() => after,
+            _ => return false,
+        };
+    }
+    true
+}
+
+/// A name, not a formula with a double bond that opens a bracket before the sign.
+fn is_key(text: &str) -> bool {
+    text.chars().next().is_some_and(char::is_alphabetic) && !text.contains(['(', '"', '\''])
 }
 
 #[cfg(test)]
@@ -177,6 +229,47 @@ mod tests {
         for word in ["X", "Zz", "0", "119", "1C", "Bq", "-6", "", "12a"] {
             assert_eq!(element_of(word), None, "{word}");
         }
+    }
+
+    /// Comments as programs write them: energies, lattices and counts are values; a name is a name.
+    #[test]
+    fn a_comment_is_a_title_unless_it_is_all_values() {
+        for values in [
+            "energy=-76.4",
+            "E = -76.4",
+            "i = 5, time = 2.0, E = -3.4",
+            "Lattice=\"5 0 0 0 5 0 0 0 5\" Properties=species:S:1:pos:R:3 pbc=\"T T T\"",
+            "-76.4 0.003",
+            "17",
+            "E= -3",
+        ] {
+            assert!(values_only(values), "{values}");
+        }
+        for title in [
+            "ethanol (E = -154.1)",
+            "2 methyl propane",
+            "1,2-dichloroethane",
+            "\"water\"",
+            "3',5'-cyclic phosphate",
+            "frame 3 energy=-1.0",
+            "E =",
+            "=",
+        ] {
+            assert!(!values_only(title), "{title}");
+        }
+    }
+
+    #[test]
+    fn long_titles_are_kept_up_to_their_limit() {
+        let mut record = Record::default();
+        let take = |text: &str, record: &mut Record| {
+            take_comment(&Line { text: text.to_owned(), number: 2, cut: false, ..LINE }, record);
+        };
+        take(&"ä".repeat(200), &mut record);
+        assert_eq!((record.title.chars().count(), record.data.len()), (200, 0));
+        take(&"ä".repeat(201), &mut record);
+        assert_eq!((record.title.chars().count(), record.title.ends_with('…')), (200, true));
+        assert_eq!(record.item("comment"), Some("ä".repeat(201).as_str()));
     }
 
     #[test]

@@ -48,8 +48,10 @@ static void words(void)
   STATUS(BMOM_OK, bmom_status_message("", 0, BMOM_MISSING, text, (int64_t)sizeof text, NULL));
   CHECK(strcmp(text, "a value is missing") == 0);
   STATUS(BMOM_OK, bmom_status_message(NULL, 0, 77, text, (int64_t)sizeof text, NULL));
-  STATUS(AT(1, BMOM_UNKNOWN_NAME), bmom_status_message("bond", -1, 2052, text, (int64_t)sizeof text, &needed));
-  CHECK(text[0] == '\0' && needed == 0);
+  STATUS(BMOM_OK, bmom_status_message("bmom_charge_from_dipole_column", -1, 2052, text, (int64_t)sizeof text, &needed));
+  CHECK(needed == 27);
+  STATUS(BMOM_OK, bmom_status_message("bmom_library_read", -1, 2028, text, (int64_t)sizeof text, &needed));
+  CHECK(strcmp(text, "argument 2: there is no such file") == 0);
   STATUS(AT(1, BMOM_NOT_UTF8), bmom_status_message("\xff", 1, 2052, text, (int64_t)sizeof text, &needed));
   STATUS(AT(1, BMOM_NULL_POINTER), bmom_status_message(NULL, -1, 2052, text, (int64_t)sizeof text, &needed));
   STATUS(AT(3, BMOM_NULL_POINTER), bmom_status_message("symbol", -1, 2052, NULL, 10, &needed));

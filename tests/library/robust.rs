@@ -2,13 +2,13 @@
 
 use proptest::prelude::*;
 
-use bondmoment::selectors::{FORMAT_CTFILE, FORMAT_XYZ};
+use bondmoment::selectors::{FORMAT_CML, FORMAT_CTFILE, FORMAT_XYZ};
 
 use super::*;
 
 /// Reads the bytes in every format and computes every row.
 fn survive(bytes: &[u8]) {
-    for format in [FORMAT_BY_CONTENT, FORMAT_XYZ, FORMAT_CTFILE] {
+    for format in [FORMAT_BY_CONTENT, FORMAT_XYZ, FORMAT_CTFILE, FORMAT_CML] {
         if let Ok(library) = MoleculeLibrary::parse(bytes, "f", format, Threads::new(1), &never()) {
             let tables = tables(&library, &Settings::default());
             assert_eq!(tables.polarity.rows(), library.entries().len());
@@ -17,9 +17,10 @@ fn survive(bytes: &[u8]) {
 }
 
 fn samples() -> Vec<Vec<u8>> {
-    ["frames.xyz", "bad_frames.xyz", "among_good.sdf", "properties.sdf"]
-        .map(|name| std::fs::read(file(name)).unwrap())
-        .to_vec()
+    let names = [
+        "frames.xyz", "bad_frames.xyz", "among_good.sdf", "properties.sdf", "v3000.sdf", "same.cml", "same_v2000.sdf.gz",
+    ];
+    names.map(|name| std::fs::read(file(name)).unwrap()).to_vec()
 }
 
 proptest! {
@@ -36,8 +37,17 @@ proptest! {
     }
 
     #[test]
+    fn random_markup(pieces in proptest::collection::vec(
+        "</?(cml|molecule|atomArray|atom|bondArray|bond|name|scalar)( (id|elementType|x3|order|atomRefs2|formalCharge)='[a-cC0-9 &;]{0,4}'){0,3}/?>|[ -~]{0,8}",
+        0..40,
+    )) {
+        survive(pieces.concat().as_bytes());
+        survive(format!("<molecule>{}", pieces.concat()).as_bytes());
+    }
+
+    #[test]
     fn mutated_files(
-        which in 0_usize..4,
+        which in 0_usize..7,
         changes in proptest::collection::vec((any::<prop::sample::Index>(), any::<u8>(), 0_u8..4), 1..12),
     ) {
         let mut bytes = samples()[which].clone();
@@ -47,7 +57,7 @@ proptest! {
                 0 => bytes[at] = byte,
                 1 => { bytes.remove(at); }
                 2 => bytes.insert(at, byte),
-                _ => bytes[at] = b"0123456789 .-$MCH\n\r>"[usize::from(byte) % 20],
+                _ => bytes[at] = b"0123456789 .-$MCH\n\r></&;\"="[usize::from(byte) % 26],
             }
         }
         survive(&bytes);

@@ -3,14 +3,19 @@
 //! An atom counts 1 electron for a double bond within the ring system, 2 for a lone pair (N, O, S with single bonds only,
 //! C−), 0 for an empty orbital (C+, B). A ring with an atom that can give none of these, or whose double bond leads out
 //! of the ring system, is not aromatic. Rings of 5 to 7 atoms with 4n + 2 electrons are; so are two of them that share
-//! a bond if together they have 4n + 2 (azulene).
+//! a bond if together they have 4n + 2 (azulene). Lone pairs alone make no ring aromatic (S7): at least one atom must have
+//! a double bond, an empty orbital or a charge, and all atoms must lie in a plane.
 
 use super::rings::Rings;
 use crate::molecule::{Bond, Neighbours};
 
-/// Per bond: part of an aromatic ring.
+/// A ring is flat if no atom is farther than this from its plane [Å] (common practice).
+const FLAT_WITHIN_A: f64 = 0.15;
+
+/// Per bond: part of an aromatic ring. A flat drawing passes for flat rings.
 pub(super) fn aromatic_bonds(
     z: &[i32],
+    xyz: &[[f64; 3]],
     charge: &[i32],
     bonds: &[Bond],
     around: &Neighbours,
@@ -46,7 +51,17 @@ pub(super) fn aromatic_bonds(
         atoms.iter().filter_map(|&atom| electrons(z, charge, bonds, around, &of_candidate, atom)).sum()
     };
     let mut aromatic = vec![false; bonds.len()];
-    let sized: Vec<&Vec<u32>> = candidates.iter().copied().filter(|ring| (5..=7).contains(&ring.len())).collect();
+    let sized: Vec<&Vec<u32>> = candidates
+        .iter()
+        .copied()
+        .filter(|ring| (5..=7).contains(&ring.len()) && is_flat(xyz, ring))
+        .filter(|ring| {
+            ring.iter().any(|&atom| {
+                let own = electrons(z, charge, bonds, around, &of_candidate, atom);
+                own.is_some_and(|count| count < 2) || charge[atom as usize] != 0
+            })
+        })
+        .collect();
     let mut single = vec![false; sized.len()];
     let mut through: Vec<Vec<u32>> = vec![Vec::new(); bonds.len()];
     for ((ring, single), number) in sized.iter().zip(&mut single).zip(0_u32..) {
@@ -77,6 +92,26 @@ pub(super) fn aromatic_bonds(
     aromatic
 }
 
+/// True if all atoms lie in the plane through the centre of the ring, across the sum of the areas that its sides span
+/// with the centre.
+fn is_flat(xyz: &[[f64; 3]], ring: &[u32]) -> bool {
+    let sub = |p: [f64; 3], q: [f64; 3]| [p[0] - q[0], p[1] - q[1], p[2] - q[2]];
+    let points: Vec<[f64; 3]> = ring.iter().filter_map(|&atom| xyz.get(atom as usize).copied()).collect();
+    let centre = [0, 1, 2].map(|k| points.iter().map(|p| p[k]).sum::<f64>() / points.len().max(1) as f64);
+    let mut area = [0.0; 3];
+    for (p, q) in points.iter().zip(points.iter().cycle().skip(1)) {
+        let (u, v) = (sub(*p, centre), sub(*q, centre));
+        area[0] += u[1] * v[2] - u[2] * v[1];
+        area[1] += u[2] * v[0] - u[0] * v[2];
+        area[2] += u[0] * v[1] - u[1] * v[0];
+    }
+    let size = (area[0] * area[0] + area[1] * area[1] + area[2] * area[2]).sqrt();
+    points.iter().all(|&p| {
+        let from = sub(p, centre);
+        (from[0] * area[0] + from[1] * area[1] + from[2] * area[2]).abs() <= FLAT_WITHIN_A * size
+    })
+}
+
 /// π electrons of an atom in a ring system, `None` if it cannot take part.
 fn electrons(
     z: &[i32],
@@ -88,7 +123,10 @@ fn electrons(
 ) -> Option<u32> {
     let atom = atom as usize;
     let own = around.of(atom);
-    let mut doubles = own.iter().filter(|&&(_, k)| bonds[k as usize].order >= 2.0);
+    let valence: f64 = own.iter().map(|&(_, k)| bonds[k as usize].order).sum();
+    // An N-oxide may be stated with five bonds; its double bond to oxygen is then no part of the π system.
+    let oxide = |other: u32| z[atom] == 7 && valence == 5.0 && z[other as usize] == 8 && around.degree(other as usize) == 1;
+    let mut doubles = own.iter().filter(|&&(other, k)| bonds[k as usize].order >= 2.0 && !oxide(other));
     if let Some(&(_, k)) = doubles.next() {
         let plain = bonds[k as usize].order == 2.0 && doubles.next().is_none();
         return (plain && of_candidate[k as usize] > 0).then_some(1);

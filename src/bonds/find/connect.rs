@@ -11,7 +11,7 @@ use crate::molecule::{Bond, Molecule, Neighbours};
 use crate::status::{Code, Failure};
 
 /// Below this part of the radius sum no bond is known.
-const TOO_CLOSE: f64 = 0.5;
+pub(super) const TOO_CLOSE: f64 = 0.5;
 /// The largest of all tolerances [Å].
 const LARGEST_TOLERANCE: f64 = 0.45;
 /// A side of a triangle is no bond if its length over its radius sum is at least this, …

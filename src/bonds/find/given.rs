@@ -9,7 +9,7 @@ use crate::status::{Code, Failure};
 ///
 /// Orders are 0, 1, 2, 3 or 1.5 (aromatic); aromatic ones become alternating single and double bonds. Rings are marked,
 /// formal charges filled in where they are not stated, impossible valences remarked (`IMPOSSIBLE_VALENCE`, the atom as
-/// item). Coordinates are not looked at, so a flat drawing serves.
+/// item). Coordinates only tell whether a ring is flat enough to be aromatic, so a flat drawing serves.
 ///
 /// # Errors
 /// Those of [`Molecule::check`] · `BadBond` (an atom that is not there, an atom with itself, a pair stated twice),

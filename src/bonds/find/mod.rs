@@ -10,6 +10,7 @@ mod connect;
 mod given;
 mod grid;
 mod kinds;
+mod lengths;
 mod matching;
 mod orders;
 mod radii;
@@ -23,6 +24,7 @@ use crate::selectors::{self, Selector};
 use crate::status::{Code, Failure, remark};
 
 pub use given::given_bonds;
+pub use lengths::given_lengths;
 pub use rings::Rings;
 
 /// Declaration of [`find_bonds`].
@@ -104,8 +106,10 @@ pub static FIND_BONDS: Function = Function {
         "Sulfur, phosphorus and the halogens are written with double bonds to oxygen, without charges; nitrogen, carbon \
          and oxygen keep the octet (nitro N+ with O-, carbon monoxide C- with O+). SiO and GeO are double bonds, BF is a \
          single bond.",
-        "Coordinates do not tell an ion from its radical: a molecule of two or three atoms counts as the neutral radical.",
-        "A ring with a double bond to an atom outside the ring system (quinone, pyridone) does not count as aromatic.",
+        "Coordinates do not tell an ion from its radical: a molecule of two or three atoms counts as the neutral radical, \
+         and so does a single nitroxide group (N-O 1.24 to 1.32 Å) if the number of electrons is odd.",
+        "A ring with a double bond to an atom outside the ring system (quinone, pyridone), one of lone pairs only (S7) and one \
+         that is not flat within 0.15 Å do not count as aromatic.",
     ],
     sources: &[
         "Cordero et al., Dalton Trans. 2008, 2832",

@@ -19,6 +19,8 @@ const LENGTH_SCALE: f64 = 0.10;
 const LENGTH_MOST: f64 = 9.0;
 /// Below this length [Å] nitrogen monoxide is the cation (1.06 Å), above it the radical (1.15 Å).
 const SHORT_NITROSYL: f64 = 1.10;
+/// N-O lengths [Å] of nitroxide radicals (common practice).
+const NITROXIDE: core::ops::RangeInclusive<f64> = 1.24..=1.32;
 /// Cost of each net elementary charge of an unsaturated part, in molecules of more than three atoms.
 const PER_CHARGE: i64 = 2 * UNIT;
 /// Cost of an atom of a ring stated as aromatic that gets no double bond, for carbon.
@@ -48,7 +50,7 @@ pub(super) fn finish(
     all_there: bool,
 ) -> Bonding {
     let (formal_charge, remarks, item) = charges::derive(molecule, &bonds, around, shapes, all_there);
-    let aromatic = aromatic_bonds(molecule.atomic_number, &formal_charge, &bonds, around, rings);
+    let aromatic = aromatic_bonds(molecule.atomic_number, molecule.xyz, &formal_charge, &bonds, around, rings);
     Bonding { bonds, aromatic, formal_charge, remarks, item }
 }
 
@@ -144,6 +146,11 @@ pub(super) fn shapes(molecule: Molecule<'_>, bonds: &[Bond], around: &Neighbours
             _ => false,
         };
     }
+    if rings.is_some() {
+        for atom in radicals(molecule, around) {
+            shapes[atom].radical = true;
+        }
+    }
     // Rings of three, five and seven unsaturated carbon atoms carry the charge that makes Hückel's rule hold.
     for ring in rings.iter().flat_map(|rings| &rings.small) {
         let charge = match ring.len() {
@@ -158,6 +165,28 @@ pub(super) fn shapes(molecule: Molecule<'_>, bonds: &[Bond], around: &Neighbours
         }
     }
     shapes
+}
+
+/// Atoms that hold unpaired or unshared electrons without a charge: both of dicarbon, and the oxygen of a nitroxide, a
+/// terminal one at a nitrogen with two other partners, if it is the only one and the number of electrons is odd.
+fn radicals(molecule: Molecule<'_>, around: &Neighbours) -> Vec<usize> {
+    let z = molecule.atomic_number;
+    if z == [6, 6] {
+        return vec![0, 1];
+    }
+    if z.iter().map(|&z| i64::from(z)).sum::<i64>() % 2 == 0 {
+        return Vec::new();
+    }
+    let oxygen = |atom: usize| z[atom] == 8 && around.degree(atom) == 1;
+    let nitroxide = |atom: usize| match *around.of(atom) {
+        [(nitrogen, _)] if oxygen(atom) && z[nitrogen as usize] == 7 && around.degree(nitrogen as usize) == 3 => {
+            let oxygens = around.of(nitrogen as usize).iter().filter(|entry| z[entry.0 as usize] == 8).count();
+            oxygens == 1 && NITROXIDE.contains(&distance(molecule.xyz, atom as u32, nitrogen))
+        }
+        _ => false,
+    };
+    let found: Vec<usize> = (0..z.len()).filter(|&atom| nitroxide(atom)).collect();
+    if found.len() == 1 { found } else { Vec::new() }
 }
 
 /// Angles about one atom.

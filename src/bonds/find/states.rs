@@ -33,6 +33,8 @@ pub(super) struct Shape {
     pub shared: bool,
     /// Boron (and its partners in bridges) in a cluster, where bonds without order leave no charge behind.
     pub cluster: bool,
+    /// Neutral with one bond less than usual: oxygen of a nitroxide, carbon of dicarbon.
+    pub radical: bool,
     /// Charge of this atom if it is carbon (or silicon …) of valence 3.
     pub trivalent_charge: i32,
     /// Charge that the caller states.
@@ -68,6 +70,7 @@ fn options(z: i32, shape: &Shape, valence: i32) -> &'static [(i32, i64)] {
         (_, 13, _, 1) => &[(0, 300), (2, 600)],
         (_, 13, _, 0) => &[(3, 0), (1, 0), (0, 300)],
         (_, 14, _, 4) => &[(0, 0)],
+        (_, 14, 6, 2) if shape.radical => &[(0, 0)],
         (_, 14, 6, 3) => {
             if shape.partners == 1 {
                 &[(-1, 250), (0, 500), (1, 500)]
@@ -109,6 +112,7 @@ fn options(z: i32, shape: &Shape, valence: i32) -> &'static [(i32, i64)] {
         (_, 15, _, 0) => &[(-3, 900), (3, 600), (0, 900)],
         (_, 16, _, 2) => &[(0, 0)],
         (_, 16, _, 0) => &[(-2, 400), (0, 500)],
+        (_, 16, 8, 1) if shape.radical => &[(0, 0)],
         (_, 16, 8, 1) => &[(-1, 230), (0, 900), (1, 900)],
         (_, 16, _, 3) if shape.partners == 1 => {
             if shape.triple {
