@@ -94,6 +94,40 @@ static void molecules(void)
          xyz_A, NULL, 0, NULL, NULL, NULL, NULL, other.dipole, NULL, other.magnitude, NULL, other.dipole, NULL, NULL, NULL));
 }
 
+/* Slips that give a number all the same: they must not pass in silence. */
+static void slips(void)
+{
+  static const int32_t waters_z[6] = {8, 1, 1, 8, 1, 1};
+  static const double waters[18] = {0.0, 0.0, 0.0, 0.0, 0.7572, 0.5865, 0.0, -0.7572, 0.5865,
+                                    5.0, 0.0, 0.0, 5.0, 0.7572, 0.5865, 5.0, -0.7572, 0.5865};
+  static const double nanometres[9] = {0.0, 0.0, 0.0, 0.0, 0.07572, 0.05865, 0.0, -0.07572, 0.05865};
+  static const int32_t pairs[4] = {0, 1, 0, 2};
+  static const double single[2] = {1.0, 1.0};
+  double dipole[3], magnitude, charge[6];
+  int32_t remarks = -1, item = -2;
+
+  /* Two molecules are no molecule: their dipole depends on how they lie. */
+  STATUS(BMOM_OK, bmom_dipole(PEOE, FRAME, 6, waters_z, NULL, waters, 0, NULL, NULL, NULL, NULL, dipole, NULL, &magnitude,
+                              NULL, NULL, &remarks, &item));
+  CHECK((remarks & BMOM_REMARK_SEVERAL_FRAGMENTS) != 0);
+  STATUS(BMOM_OK, bmom_partial_charges(PEOE, 6, waters_z, NULL, waters, 0, NULL, NULL, charge, NULL, &remarks, &item));
+  CHECK((remarks & BMOM_REMARK_SEVERAL_FRAGMENTS) != 0);
+  STATUS(BMOM_OK, bmom_dipole(PEOE, FRAME, 3, waters_z, NULL, waters, 0, NULL, NULL, NULL, NULL, dipole, NULL, &magnitude,
+                              NULL, NULL, &remarks, &item));
+  CHECK((remarks & BMOM_REMARK_SEVERAL_FRAGMENTS) == 0);
+  /* Coordinates in nm, with and without stated bonds: no bond is that short. */
+  STATUS(AT(3, BMOM_ATOMS_TOO_CLOSE), bmom_dipole(PEOE, FRAME, 3, waters_z, NULL, nanometres, 2, pairs, single, NULL, NULL,
+                                                  dipole, NULL, &magnitude, NULL, NULL, &remarks, &item));
+  CHECK(item == 1);
+  STATUS(AT(3, BMOM_ATOMS_TOO_CLOSE), bmom_dipole(PEOE, FRAME, 3, waters_z, NULL, nanometres, 0, NULL, NULL, NULL, NULL,
+                                                  dipole, NULL, &magnitude, NULL, NULL, &remarks, &item));
+  /* Bonds without their pairs, uncertainties without their charges. */
+  STATUS(AT(4, BMOM_NULL_POINTER), bmom_dipole(PEOE, FRAME, 3, waters_z, NULL, waters, 2, NULL, single, NULL, NULL, dipole,
+                                               NULL, &magnitude, NULL, NULL, &remarks, &item));
+  STATUS(AT(5, BMOM_NULL_POINTER), bmom_dipole(PEOE, FRAME, 3, waters_z, NULL, waters, 0, NULL, NULL, NULL, single, dipole,
+                                               NULL, &magnitude, NULL, NULL, &remarks, &item));
+}
+
 /* The plain form of one molecule. */
 static void one_molecule(void)
 {
@@ -241,6 +275,7 @@ int main(void)
 {
   molecules_ready();
   molecules();
+  slips();
   one_molecule();
   point_charges();
   polarities();
