@@ -1,5 +1,7 @@
 //! Bonds from coordinates, against structures whose bonds are known.
 
+#[path = "bonds_find/aromatic.rs"]
+mod aromatic;
 #[path = "bonds_find/hard.rs"]
 mod hard;
 #[path = "bonds_find/stated.rs"]

@@ -162,3 +162,79 @@ fn opposite_formal_charges_on_bonded_atoms_cancel() {
     let (nitrogen, oxygen) = (charges[1], charges[2]);
     assert!(nitrogen.abs() < 0.5 && oxygen > -0.35, "N {nitrogen}, O {oxygen}");
 }
+
+/// Charges of a molecule of which only bonds and formal charges matter here.
+fn drawn(z: &[i32], formal: &[i32], bonds: &[(u32, u32, f64)]) -> Vec<f64> {
+    let xyz: Vec<[f64; 3]> = (0..z.len()).map(|k| [k as f64, 0.0, 0.0]).collect();
+    let molecule = Molecule { atomic_number: z, formal_charge: Some(formal), xyz: &xyz };
+    let stated: Vec<Bond> = bonds.iter().map(|&(a, b, order)| Bond { a, b, order }).collect();
+    let bonding = bondmoment::bonds::find::given_bonds(molecule, &stated).unwrap();
+    peoe_charges(molecule, &bonding).unwrap().charge
+}
+
+/// Atoms that symmetry makes equal have equal charges: the five-, seven- and three-fold rings of the textbook ions, both
+/// nitrogens of imidazolide, both oxygens of nitrogen dioxide.
+#[test]
+fn equivalent_atoms_have_equal_charges() {
+    for (n, net) in [(5, -1), (7, 1), (3, 1)] {
+        let mut z = vec![6; n];
+        z.extend(vec![1; n]);
+        let mut formal = vec![0; 2 * n];
+        formal[0] = net;
+        let n = n as u32;
+        let mut bonds: Vec<(u32, u32, f64)> =
+            (0..n).map(|k| (k, (k + 1) % n, if k % 2 == 1 { 2.0 } else { 1.0 })).collect();
+        bonds.extend((0..n).map(|k| (k, n + k, 1.0)));
+        let charges = drawn(&z, &formal, &bonds);
+        for part in charges.chunks(n as usize) {
+            assert!(part.iter().all(|q| (q - part[0]).abs() < 1e-14), "{n}: {charges:?}");
+        }
+        assert!((charges.iter().sum::<f64>() - f64::from(net)).abs() < 1e-14);
+    }
+    // N1 C2 N3 C4 C5, and their hydrogens.
+    let imidazolide =
+        [(0, 1, 1.0), (1, 2, 2.0), (2, 3, 1.0), (3, 4, 2.0), (4, 0, 1.0), (1, 5, 1.0), (3, 6, 1.0), (4, 7, 1.0)];
+    let charges = drawn(&[7, 6, 7, 6, 6, 1, 1, 1], &[-1, 0, 0, 0, 0, 0, 0, 0], &imidazolide);
+    assert!((charges[0] - charges[2]).abs() < 1e-14 && (charges[3] - charges[4]).abs() < 1e-14, "{charges:?}");
+    let dioxide = drawn(&[7, 8, 8], &[0; 3], &[(0, 1, 2.0), (0, 2, 1.0)]);
+    assert!((dioxide[1] - dioxide[2]).abs() < 1e-15 && dioxide[1] < 0.0, "{dioxide:?}");
+}
+
+/// Nitro, N-oxide, azide and diazo groups have the same charges with five bonds at nitrogen as with formal charges.
+#[test]
+fn five_bonds_at_nitrogen_are_a_way_of_writing() {
+    type Bonds<'a> = &'a [(u32, u32, f64)];
+    let cases: [(&str, &[i32], &[i32], Bonds<'_>, Bonds<'_>); 4] = [
+        (
+            "nitromethane",
+            &[7, 8, 8, 6, 1, 1, 1],
+            &[1, -1, 0, 0, 0, 0, 0],
+            &[(0, 1, 1.0), (0, 2, 2.0), (0, 3, 1.0), (3, 4, 1.0), (3, 5, 1.0), (3, 6, 1.0)],
+            &[(0, 1, 2.0), (0, 2, 2.0), (0, 3, 1.0), (3, 4, 1.0), (3, 5, 1.0), (3, 6, 1.0)],
+        ),
+        (
+            "pyridine N-oxide without hydrogens",
+            &[7, 8, 6, 6, 6, 6, 6],
+            &[1, -1, 0, 0, 0, 0, 0],
+            &[(0, 1, 1.0), (0, 2, 2.0), (2, 3, 1.0), (3, 4, 2.0), (4, 5, 1.0), (5, 6, 2.0), (0, 6, 1.0)],
+            &[(0, 1, 2.0), (0, 2, 2.0), (2, 3, 1.0), (3, 4, 2.0), (4, 5, 1.0), (5, 6, 2.0), (0, 6, 1.0)],
+        ),
+        (
+            "hydrazoic acid",
+            &[1, 7, 7, 7],
+            &[0, 0, 1, -1],
+            &[(0, 1, 1.0), (1, 2, 2.0), (2, 3, 2.0)],
+            &[(0, 1, 1.0), (1, 2, 2.0), (2, 3, 3.0)],
+        ),
+        (
+            "diazomethane",
+            &[6, 7, 7, 1, 1],
+            &[0, 1, -1, 0, 0],
+            &[(0, 1, 2.0), (1, 2, 2.0), (0, 3, 1.0), (0, 4, 1.0)],
+            &[(0, 1, 2.0), (1, 2, 3.0), (0, 3, 1.0), (0, 4, 1.0)],
+        ),
+    ];
+    for (name, z, formal, apart, together) in cases {
+        assert_eq!(drawn(z, formal, apart), drawn(z, &vec![0; z.len()], together), "{name}");
+    }
+}

@@ -7,6 +7,7 @@ mod library {
     mod robust;
     mod rows;
     mod runs;
+    mod told;
     mod v3000;
 
     use std::path::PathBuf;

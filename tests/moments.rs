@@ -13,6 +13,8 @@ mod open_set;
 mod point_groups;
 #[path = "moments/random.rs"]
 mod random;
+#[path = "moments/rotors.rs"]
+mod rotors;
 #[path = "published/structures.rs"]
 mod structures;
 #[path = "moments/verdicts.rs"]

@@ -3,8 +3,8 @@
 use std::io::{BufWriter, Write, stdout};
 use std::sync::atomic::AtomicBool;
 
-use bondmoment::moments::PEOE_RMS_D;
 use bondmoment::library::{Settings, Table, Tabulation, Wanted};
+use bondmoment::moments::PEOE_RMS_D;
 use bondmoment::parallel::Threads;
 use bondmoment::selectors::FORMAT_BY_CONTENT;
 use clap::Args;

@@ -14,7 +14,9 @@ use bondmoment::library::write::{CsvStyle, write_csv, write_json_lines};
 use bondmoment::library::{Settings, Table, Tables, Tabulation, Wanted};
 use bondmoment::moments::PEOE_RMS_D;
 use bondmoment::parallel::Threads;
-use bondmoment::selectors::FORMAT_BY_CONTENT;
+use bondmoment::selectors::{
+    CHARGES_PEOE_1980, FORMAT_BY_CONTENT, MASSES_ABUNDANT_ISOTOPE_2020, RADII_PYYKKO_DOUBLE_2009, RADII_PYYKKO_TRIPLE_2005,
+};
 use bondmoment::tables;
 use clap::Args;
 use indicatif::{ProgressBar, ProgressStyle};
@@ -246,10 +248,27 @@ fn write_page(out: &mut impl Write, settings: &Settings, paths: &[PathBuf]) -> R
     }
     show::columns(out, &lines)?;
     writeln!(out, "\nSources")?;
-    for choice in [settings.charge_model, settings.electronegativity, settings.ionic_law, settings.covalent_radii] {
+    for choice in [
+        settings.charge_model,
+        settings.electronegativity,
+        settings.ionic_law,
+        settings.covalent_radii,
+        RADII_PYYKKO_DOUBLE_2009,
+        RADII_PYYKKO_TRIPLE_2005,
+        settings.vdw_radii,
+        MASSES_ABUNDANT_ISOTOPE_2020,
+    ] {
         if let Ok(source) = tables::source(choice) {
             writeln!(out, "  {}: {}, {}", choice.name(), source.author, source.journal)?;
         }
+    }
+    if settings.charge_model == CHARGES_PEOE_1980 {
+        writeln!(
+            out,
+            "\nPEOE states no uncertainty: verdicts take its rms over the open set of measured dipoles, {PEOE_RMS_D} D, in every\n\
+             direction. With it a molecule is polar above about {:.1} D and non-polar by symmetry only.",
+            settings.polarity_limit_d + 2.0 * PEOE_RMS_D
+        )?;
     }
     Ok(())
 }

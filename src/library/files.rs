@@ -113,9 +113,8 @@ pub(super) type Stream = Box<dyn BufRead + Send>;
 
 /// A reader of a file that goes on at a spot.
 pub(super) fn reader_at(source: &Source, spot: Spot) -> Result<Reader<Stream>, Problem> {
-    let stream = |byte| -> Result<Stream, Problem> {
-        Ok(Box::new(BufReader::with_capacity(HEAD, open_at(source, byte)?)))
-    };
+    let stream =
+        |byte| -> Result<Stream, Problem> { Ok(Box::new(BufReader::with_capacity(HEAD, open_at(source, byte)?))) };
     let again = source.packed || source.format == FORMAT_CML;
     if !again || spot == Spot::START {
         return Ok(Reader::at(stream(spot.byte)?, source.packed, &source.name, source.format, spot));

@@ -8,7 +8,6 @@
 //!   what a run can be told.
 
 mod cml;
-mod cml_molecule;
 mod ctfile;
 mod drawing;
 mod expected;
@@ -19,7 +18,6 @@ mod fragments;
 mod hydrogens;
 pub mod kinds;
 mod lines;
-mod markup;
 pub mod molecule_library;
 mod packed;
 pub mod polarity_table;

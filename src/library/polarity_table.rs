@@ -48,7 +48,12 @@ pub static POLARITY_COLUMNS: &[ColumnKind] = &[
     ),
     column("delta_chi", TYPE_NUMBER, "", "Its difference of electronegativity, not negative"),
     column("negative_end", TYPE_TEXT, "", "Its more electronegative atom"),
-    column("strongest_bond_charge_e", TYPE_NUMBER, "e", "Charge that it has drawn along that bond by the charge model [e]"),
+    column(
+        "strongest_bond_charge_e",
+        TYPE_NUMBER,
+        "e",
+        "Charge that it has drawn along that bond by the charge model [e]",
+    ),
     column("charge_model", TYPE_TEXT, "", "Model of the partial charges"),
     column("data_version", TYPE_TEXT, "", "Version of the embedded tables"),
     column("status", TYPE_TEXT, "", "OK, or why the row has no dipole"),
@@ -71,7 +76,12 @@ pub static BONDS_COLUMNS: &[ColumnKind] = &[
     column("delta_chi", TYPE_NUMBER, "", "Electronegativity of atom b less that of atom a"),
     column("negative_end", TYPE_TEXT, "", "The more electronegative atom; empty for like atoms"),
     column("ionic_percent", TYPE_NUMBER, "%", "Ionic character by the law chosen [%]"),
-    column("bond_charge_e", TYPE_NUMBER, "e", "Charge of atom a drawn by atom b along the bond, by the charge model [e]"),
+    column(
+        "bond_charge_e",
+        TYPE_NUMBER,
+        "e",
+        "Charge of atom a drawn by atom b along the bond, by the charge model [e]",
+    ),
     column("class", TYPE_TEXT, "", "non-polar, polar or ionic; expected_A is not for ionic bonds"),
 ];
 

@@ -67,7 +67,8 @@ impl Words<'_> {
         } else if let Err(failure) = &computed.verdict {
             let told = [Code::FlatDrawing, Code::HydrogensMissing, Code::SeveralFragments];
             if !told.contains(&failure.code) {
-                let item = usize::try_from(failure.item).map_or(String::new(), |item| format!(" ({})", self.label(item)));
+                let item =
+                    usize::try_from(failure.item).map_or(String::new(), |item| format!(" ({})", self.label(item)));
                 words.push(format!("{}{item}", failure.code.text()));
             }
         }
@@ -111,7 +112,7 @@ impl Words<'_> {
                 remark::OPEN_SHELL if !kind.odd_electrons => words.push("stated as a radical".to_owned()),
                 remark::OPEN_SHELL if kind.radical_or_ion => {
                     words.push(text.to_owned());
-                    words.push("radical or ion: coordinates do not tell; state the charge".to_owned());
+                    words.push("radical or ion: coordinates do not tell, so state the charge".to_owned());
                 }
                 _ => words.push(text.to_owned()),
             }

@@ -45,7 +45,10 @@ pub(super) fn read(lines: &[Line], record: &mut Record) -> Result<usize, Fault> 
             }
             ("BEGIN", _) => {
                 let found = quoted(&statement.text);
-                return Err((statement.line, format!("expected the block of atoms, of bonds or of extras, found {found}")));
+                return Err((
+                    statement.line,
+                    format!("expected the block of atoms, of bonds or of extras, found {found}"),
+                ));
             }
             ("END", "CTAB") => inside = false,
             _ => {}
@@ -237,7 +240,10 @@ impl Table {
         };
         let z = element(word(1)).map_err(fail)?;
         let (Some(x), Some(y), Some(height)) = (decimal(word(2)), decimal(word(3)), decimal(word(4))) else {
-            return Err(fail(format!("expected an index, an element and three coordinates, found {}", quoted(&line.text))));
+            return Err(fail(format!(
+                "expected an index, an element and three coordinates, found {}",
+                quoted(&line.text)
+            )));
         };
         let xyz = [x, y, height];
         if xyz.iter().any(|x| x.abs() > LARGEST_COORDINATE_A) {
@@ -252,7 +258,9 @@ impl Table {
             let whole = |least: i64, most: i64| -> Result<i32, Fault> {
                 let value = integer(value).filter(|value| (least..=most).contains(value));
                 let value = value.and_then(|value| i32::try_from(value).ok());
-                value.ok_or_else(|| fail(format!("expected {key} from {least} to {most}, found {}", quoted(value_of(line, key)))))
+                value.ok_or_else(|| {
+                    fail(format!("expected {key} from {least} to {most}, found {}", quoted(value_of(line, key))))
+                })
             };
             match key {
                 "CHG" => charge = whole(-15, 15)?,
@@ -364,14 +372,10 @@ mod tests {
 
     #[test]
     fn quotes_and_brackets_keep_words_together() {
-        assert_eq!(words("1 C  0 CLASS=\"a \"\"b\"\" c\" X=(2 1 2) [C, N]"), [
-            "1",
-            "C",
-            "0",
-            "CLASS=a \"b\" c",
-            "X=(2 1 2)",
-            "[C, N]"
-        ]);
+        assert_eq!(
+            words("1 C  0 CLASS=\"a \"\"b\"\" c\" X=(2 1 2) [C, N]"),
+            ["1", "C", "0", "CLASS=a \"b\" c", "X=(2 1 2)", "[C, N]"]
+        );
         assert_eq!(words("\"\" \"open"), ["", "open"]);
         assert!(words("  ").is_empty());
     }

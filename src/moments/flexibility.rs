@@ -80,11 +80,10 @@ struct Tree {
     in_tree: Vec<bool>,
 }
 
-/// A point of a hinge axis: the middle of its bond.
+/// A point of a hinge axis: the middle of its bond, or between a metal and the centre of its ring.
 fn middle(hinges: &Hinges, hinge: usize, points: &[Vec3]) -> Vec3 {
-    let ends = hinges.bonds.get(hinge).copied().unwrap_or_default();
-    let at = |atom: u32| points.get(atom as usize).copied().unwrap_or_default();
-    scale(add(at(ends.0), at(ends.1)), 0.5)
+    let (from, to) = hinges.axis(hinge, points);
+    scale(add(from, to), 0.5)
 }
 
 /// Moments [D] of the fragments, made neutral by charges on the hinges; `None` if a part has a net charge.
@@ -168,9 +167,9 @@ impl Problem {
     fn new(hinges: &Hinges, tree: &Tree, points: &[Vec3], moments: Vec<Vec3>) -> Self {
         let mut own = Self { entries: Vec::new(), starts: vec![0], moments };
         let index = |k: usize| u32::try_from(k).unwrap_or(u32::MAX);
-        for (&(i, j), &(a, b)) in hinges.bonds.iter().zip(&hinges.ends) {
-            let at = |atom: u32| points.get(atom as usize).copied().unwrap_or_default();
-            if let Some(axis) = super::algebra::unit(sub(at(j), at(i))) {
+        for (h, &(a, b)) in hinges.ends.iter().enumerate() {
+            let (from, to) = hinges.axis(h, points);
+            if let Some(axis) = super::algebra::unit(sub(to, from)) {
                 own.entries.push((index(a), axis));
                 own.entries.push((index(b), scale(axis, -1.0)));
                 own.starts.push(own.entries.len());

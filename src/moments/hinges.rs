@@ -9,6 +9,9 @@
 //! - joins a pyramidal amine nitrogen to an atom with a further neighbour, outside rigid cages: nitrogen inversion is then
 //!   a reflection of the nitrogen's own fragment, which the bound allows for.
 //!
+//! A ring with a bond of order 0 (hydrogen and halogen bridges, chelates) is stiff. A ring of which three or more atoms are
+//! bonded to one metal by order 0 turns as a whole about the axis from the metal to the centre of those atoms.
+//!
 //! Cages are rigid: rings up to seven of which two share more than two atoms (norbornane, adamantane), and three
 //! rings up to five around one atom that pairwise share a bond (cubane). Turning about a bond to a linear group is
 //! a hinge that changes nothing.
@@ -16,6 +19,7 @@
 use super::algebra::{Vec3, cross, dot, eigen, norm, sub, unit};
 use super::symmetry::symmetric_about;
 use crate::bonds::find::Rings;
+use crate::bonds::is_metal;
 use crate::molecule::{Bonding, Molecule, Neighbours};
 
 /// A part with more atoms than this is not searched for symmetry about its hinge.
@@ -27,8 +31,10 @@ const FLAT_WITHIN_A: f64 = 0.1;
 
 /// Hinges and fragments of a molecule.
 pub(super) struct Hinges {
-    /// The two atoms of every hinge.
+    /// The two atoms of every hinge; of a ring on a metal, the metal and its first ring atom.
     pub(super) bonds: Vec<(u32, u32)>,
+    /// Of a ring on a metal, the ring atoms bonded to it, through whose centre the axis passes; else empty.
+    bound: Vec<Vec<u32>>,
     /// The fragments of those atoms.
     pub(super) ends: Vec<(usize, usize)>,
     /// The fragment of every atom.
@@ -61,21 +67,101 @@ pub(super) fn find(molecule: Molecule<'_>, bonding: &Bonding) -> Hinges {
             around.degree(i) > 1 && around.degree(j) > 1
         };
     }
-    let kept: Vec<_> =
-        bonding.bonds.iter().zip(&is_hinge).filter(|(_, hinge)| !**hinge).map(|(bond, _)| *bond).collect();
+    let turning = turning_rings(&scene);
+    let mut cut = is_hinge.clone();
+    for slot in turning.iter().flat_map(|ring| &ring.bonds).map(|&k| k as usize) {
+        cut.iter_mut().skip(slot).take(1).for_each(|cut| *cut = true);
+    }
+    let kept: Vec<_> = bonding.bonds.iter().zip(&cut).filter(|(_, cut)| !**cut).map(|(bond, _)| *bond).collect();
     let (fragment, fragments) = Neighbours::new(atoms, &kept).fragments();
-    let mut hinges = Hinges { bonds: Vec::new(), ends: Vec::new(), fragment, fragments, in_ring: Vec::new() };
+    let mut hinges =
+        Hinges { bonds: Vec::new(), bound: Vec::new(), ends: Vec::new(), fragment, fragments, in_ring: Vec::new() };
     for (k, (bond, _)) in bonding.bonds.iter().zip(&is_hinge).enumerate().filter(|(_, (_, hinge))| **hinge) {
         let of = |atom: u32| hinges.fragment.get(atom as usize).map_or(0, |&fragment| fragment as usize);
         let ends = (of(bond.a), of(bond.b));
         // Around a ring with a single hinge nothing turns.
         if ends.0 != ends.1 {
             hinges.bonds.push((bond.a, bond.b));
+            hinges.bound.push(Vec::new());
             hinges.ends.push(ends);
             hinges.in_ring.push(rings.in_ring(k));
         }
     }
+    for ring in turning {
+        let of = |atom: u32| hinges.fragment.get(atom as usize).map_or(0, |&fragment| fragment as usize);
+        let Some(&first) = ring.atoms.first() else { continue };
+        let ends = (of(ring.metal), of(first));
+        if ends.0 != ends.1 {
+            hinges.bonds.push((ring.metal, first));
+            hinges.bound.push(ring.atoms);
+            hinges.ends.push(ends);
+            hinges.in_ring.push(false);
+        }
+    }
     hinges
+}
+
+impl Hinges {
+    /// Two points of the axis of a hinge; `points` holds one point an atom.
+    pub(super) fn axis(&self, hinge: usize, points: &[Vec3]) -> (Vec3, Vec3) {
+        let at = |atom: u32| points.get(atom as usize).copied().unwrap_or_default();
+        let (i, j) = self.bonds.get(hinge).copied().unwrap_or_default();
+        match self.bound.get(hinge) {
+            Some(bound) if !bound.is_empty() => {
+                let places: Vec<Vec3> = bound.iter().map(|&atom| at(atom)).collect();
+                (at(i), super::dipole::centre_of_positions(&places))
+            }
+            _ => (at(i), at(j)),
+        }
+    }
+}
+
+/// A ring on a metal.
+struct TurningRing {
+    metal: u32,
+    /// The ring atoms bonded to it and the bonds.
+    atoms: Vec<u32>,
+    bonds: Vec<u32>,
+}
+
+/// Rings of non-metals with ordered bonds of which three or more atoms are bonded to one metal by order 0. Of rings that
+/// share such atoms the first counts; the others then hold it.
+fn turning_rings(scene: &Scene<'_>) -> Vec<TurningRing> {
+    let mut found: Vec<TurningRing> = Vec::new();
+    // With the metal, two neighbours in the ring make a smaller ring of three; without it the ring itself is listed.
+    let ordered: Vec<_> = scene.bonding.bonds.iter().filter(|bond| bond.order > 0.0).copied().collect();
+    if ordered.len() == scene.bonding.bonds.len() {
+        return found;
+    }
+    let rings = Rings::new(scene.molecule.len(), &ordered);
+    for ring in &rings.small {
+        let order_to = |k: u32| scene.bonding.bonds.get(k as usize).map_or(0.0, |bond| bond.order);
+        let whole = ring.iter().all(|&atom| {
+            let inside = |&&(other, k): &&(u32, u32)| ring.contains(&other) && order_to(k) > 0.0;
+            !is_metal(scene.element(atom as usize)) && scene.around.of(atom as usize).iter().filter(inside).count() == 2
+        });
+        if !whole {
+            continue;
+        }
+        let mut to_metals: Vec<(u32, u32, u32)> = Vec::new();
+        for &atom in ring {
+            for &(other, k) in scene.around.of(atom as usize) {
+                if order_to(k) == 0.0 && is_metal(scene.element(other as usize)) && !ring.contains(&other) {
+                    to_metals.push((other, atom, k));
+                }
+            }
+        }
+        to_metals.sort_unstable();
+        for own in to_metals.chunk_by(|one, other| one.0 == other.0).filter(|own| own.len() >= 3) {
+            let Some(&(metal, ..)) = own.first() else { continue };
+            let atoms: Vec<u32> = own.iter().map(|entry| entry.1).collect();
+            let shares = |known: &TurningRing| known.metal == metal && known.atoms.iter().any(|a| atoms.contains(a));
+            if !found.iter().any(shares) {
+                found.push(TurningRing { metal, atoms, bonds: own.iter().map(|entry| entry.2).collect() });
+            }
+        }
+    }
+    found
 }
 
 /// True if turning about some bond may change the dipole of a molecule whose charges are not known. Harmless are turns of
@@ -88,30 +174,36 @@ pub fn may_change_by_turning(molecule: Molecule<'_>, bonding: &Bonding) -> bool 
     }
     let around = Neighbours::new(molecule.len(), &bonding.bonds);
     let at = |atom: u32| molecule.xyz.get(atom as usize).copied().unwrap_or_default();
-    let harmless = |&(i, j): &(u32, u32)| {
-        let Some(axis) = unit(sub(at(j), at(i))) else { return false };
-        [(i, j), (j, i)].iter().any(|&(root, beyond)| match part(&around, root, beyond) {
+    let harmless = |hinge: usize| {
+        let (Some(&(i, j)), (from, to)) = (hinges.bonds.get(hinge), hinges.axis(hinge, molecule.xyz)) else {
+            return false;
+        };
+        let Some(axis) = unit(sub(to, from)) else { return false };
+        let single = [j];
+        let far = hinges.bound.get(hinge).filter(|bound| !bound.is_empty()).map_or(&single[..], Vec::as_slice);
+        [true, false].iter().any(|&beyond| match part(&around, i, far, beyond) {
             Some(atoms) => {
                 let places: Vec<(i32, Vec3)> = atoms
                     .iter()
                     .map(|&atom| (molecule.atomic_number.get(atom as usize).copied().unwrap_or(0), at(atom)))
                     .collect();
-                symmetric_about(&places, at(root), axis, ROTOR_WITHIN_A)
+                symmetric_about(&places, from, axis, ROTOR_WITHIN_A)
             }
             None => false,
         })
     };
-    !hinges.bonds.iter().all(harmless)
+    !(0..hinges.bonds.len()).all(harmless)
 }
 
-/// The atoms on the far side of a bond that lies in no ring, if there are not too many.
-fn part(around: &Neighbours, root: u32, beyond: u32) -> Option<Vec<u32>> {
-    let mut atoms = vec![beyond];
+/// The atoms on the far side of the bonds from `root` to the atoms `far`, which lie in no ring with others, or those on
+/// the side of `root`; `None` if there are too many.
+fn part(around: &Neighbours, root: u32, far: &[u32], beyond: bool) -> Option<Vec<u32>> {
+    let mut atoms = if beyond { far.to_vec() } else { vec![root] };
     let mut head = 0;
     while let Some(&atom) = atoms.get(head) {
         head += 1;
         for &(other, _) in around.of(atom as usize) {
-            let back = atom == beyond && other == root;
+            let back = (other == root && far.contains(&atom)) || (atom == root && far.contains(&other));
             if !back && !atoms.contains(&other) {
                 atoms.push(other);
             }
@@ -218,9 +310,11 @@ fn flexible_ring_bonds(scene: &Scene<'_>, rings: &Rings) -> Vec<RingBond> {
             *slot |= [bond.a, bond.b].iter().any(|&atom| is_saturated(scene, atom as usize, true));
         }
     }
-    for ((slot, system), _) in found.iter_mut().zip(&rings.system).zip(&listed).filter(|(_, listed)| !**listed) {
+    let orders: Vec<f64> = scene.bonding.bonds.iter().map(|bond| bond.order).collect();
+    let large = found.iter_mut().zip(&rings.system).zip(&orders).zip(&listed).filter(|(_, listed)| !**listed);
+    for (((slot, system), order), _) in large {
         let soft = system.and_then(|system| soft.get(system)).copied().unwrap_or(false);
-        *slot = if soft { RingBond::Flexible } else { RingBond::Stiff };
+        *slot = if soft && *order > 0.0 { RingBond::Flexible } else { RingBond::Stiff };
     }
     found
 }
@@ -232,7 +326,13 @@ fn is_saturated(scene: &Scene<'_>, atom: usize, not_flat: bool) -> bool {
 }
 
 fn is_flexible(scene: &Scene<'_>, ring: &[u32]) -> bool {
-    if ring.len() < 4 {
+    let bridged = || {
+        ring.iter().any(|&atom| {
+            let inside = |&(other, k): &(u32, u32)| ring.contains(&other) && scene.order(k as usize) == 0.0;
+            scene.around.of(atom as usize).iter().any(inside)
+        })
+    };
+    if ring.len() < 4 || bridged() {
         return false;
     }
     let not_flat = !is_flat(scene, ring);

@@ -6,6 +6,7 @@ pub mod dipole;
 pub mod flexibility;
 mod hinges;
 pub mod polarity;
+mod rotors;
 pub mod symmetry;
 
 pub use dipole::{DIPOLE, DIPOLE_OF_CHARGES, Dipole, dipole, dipole_of_charges};

@@ -3,6 +3,7 @@
 use super::algebra::{eigen, norm};
 use super::dipole::{Dipole, NEUTRAL_WITHIN_E, centre_of_mass, dipole, magnitude};
 use super::flexibility::{greatest_dipole, may_change_by_turning};
+use super::rotors::forbidden_with_free_rotors;
 use super::symmetry::{DipoleSymmetry, dipole_symmetry};
 use crate::charges::Charges;
 use crate::declare::{Argument, Function, Kind, NUMBER};
@@ -137,6 +138,7 @@ pub struct Verdict {
 /// `charges` are those of the chosen model, or why there are none; `model_rms_D` stands for the uncertainty of a model
 /// that states none ([`PEOE_RMS_D`]; NaN: judge only with an uncertainty). In this order:
 /// - the point group forbids a dipole (within 0.01 Å): the dipole is exactly 0, with any charges or none, `BY_SYMMETRY`;
+///   rotors XY3 such as methyl and CF3 count as turning freely, so that their setting does not matter (p-xylene);
 /// - a net charge: `charged`, the dipole being about the centre of mass;
 /// - else the rule of [`polarity`].
 ///
@@ -156,9 +158,12 @@ pub fn verdict(
 ) -> Result<Verdict, Failure> {
     molecule.check()?;
     let limit = DIPOLE_POLARITY.number(1, limit_D)?;
-    let several = Neighbours::new(molecule.len(), &bonding.bonds).fragments().1 > 1;
+    let around = Neighbours::new(molecule.len(), &bonding.bonds);
+    let several = around.fragments().1 > 1;
     let mut remarks = if several { remark::SEVERAL_FRAGMENTS } else { 0 };
-    let forbidden = dipole_symmetry(molecule, SYMMETRY_WITHIN_A)? == DipoleSymmetry::Forbidden;
+    let order = |bond: u32| bonding.bonds.get(bond as usize).map_or(0.0, |bond| bond.order);
+    let forbidden = dipole_symmetry(molecule, SYMMETRY_WITHIN_A)? == DipoleSymmetry::Forbidden
+        || forbidden_with_free_rotors(molecule, &around, &order, SYMMETRY_WITHIN_A)?;
     let reported = if forbidden {
         remarks |= remark::BY_SYMMETRY;
         let charged = match charges {

@@ -46,19 +46,24 @@ pub fn dipole_symmetry(molecule: Molecule<'_>, tolerance_A: f64) -> Result<Dipol
     if !(tolerance_A > 0.0 && tolerance_A < 1.0) {
         return Err(Failure::new(Code::OutOfRange));
     }
-    let centre = centre_of_positions(molecule.xyz);
-    let points: Vec<Vec3> = molecule.xyz.iter().map(|&r| sub(r, centre)).collect();
+    left_by_operations(molecule.atomic_number, molecule.xyz, tolerance_A)
+}
+
+/// What the operations that take these atoms to one another leave of a dipole.
+pub(super) fn left_by_operations(elements: &[i32], xyz: &[Vec3], tolerance: f64) -> Result<DipoleSymmetry, Failure> {
+    let centre = centre_of_positions(xyz);
+    let points: Vec<Vec3> = xyz.iter().map(|&r| sub(r, centre)).collect();
     let Some(longest) = points.iter().copied().max_by(|a, b| norm(*a).total_cmp(&norm(*b))) else {
         return Err(Failure::new(Code::NoAtoms));
     };
-    let mut search = Search::new(molecule.atomic_number, &points, tolerance_A);
+    let mut search = Search::new(elements, &points, tolerance);
     let inversion = [[-1.0, 0.0, 0.0], [0.0, -1.0, 0.0], [0.0, 0.0, -1.0]];
-    if norm(longest) <= 0.5 * tolerance_A || search.holds(&inversion) {
+    if norm(longest) <= 0.5 * tolerance || search.holds(&inversion) {
         return Ok(DipoleSymmetry::Forbidden);
     }
     let axis = principal_axis(&points).or(unit(longest)).unwrap_or([0.0, 0.0, 1.0]);
     // Turning about the axis moves no atom of a linear molecule by more than the tolerance.
-    if points.iter().all(|&p| norm(cross(axis, p)) <= 0.5 * tolerance_A) {
+    if points.iter().all(|&p| norm(cross(axis, p)) <= 0.5 * tolerance) {
         return Ok(DipoleSymmetry::Axis(with_sense(axis)));
     }
     search.run();

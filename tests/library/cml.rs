@@ -1,6 +1,5 @@
 //! Chemical Markup Language.
 
-use bondmoment::library::Entry;
 use bondmoment::molecule::Bond;
 
 use super::*;
@@ -15,7 +14,9 @@ fn all_told(content: &str) -> Vec<String> {
 
 /// A broken record made of a molecule with a fault, and a good one after it.
 fn message_of(inner: &str) -> String {
-    let told = all_told(&format!("<cml>\n<molecule title='x'>\n{inner}\n</molecule>\n<molecule title='y'>{HF}</molecule></cml>"));
+    let told = all_told(&format!(
+        "<cml>\n<molecule title='x'>\n{inner}\n</molecule>\n<molecule title='y'>{HF}</molecule></cml>"
+    ));
     assert_eq!(told.len(), 2, "{told:?}");
     assert_eq!(told[1], "y");
     told[0].clone()
@@ -74,7 +75,8 @@ fn names_and_data() {
 #[test]
 fn nested_molecules_are_fragments_of_the_outer_one() {
     let ammonium = "<molecule formalCharge='1'><atomArray><atom id='a1' elementType='Na' x3='3' y3='0' z3='0'/></atomArray></molecule>";
-    let record = one(&format!("<molecule title='pair'>{ammonium}<molecule formalCharge='0'>{HF}</molecule></molecule>"));
+    let record =
+        one(&format!("<molecule title='pair'>{ammonium}<molecule formalCharge='0'>{HF}</molecule></molecule>"));
     assert_eq!(record.atomic_number, [11, 1, 9]);
     assert_eq!(record.formal_charge.as_deref(), Some(&[1, 0, 0][..]));
     // Ids may be used again in another fragment, but not across.
@@ -203,5 +205,5 @@ fn hydrogen_bonds_are_left_out() {
             .replace("</atomArray>", "<atom id='a3' elementType='He' x3='0' y3='0' z3='4'/></atomArray>")
     ));
     assert_eq!(record.bonds.map(|bonds| bonds.len()), Some(1));
-    assert!(matches!(parse(b"<cml><molecule ref='m'/></cml>").entries(), [] as &[Entry]));
+    assert_eq!(parse(b"<cml><molecule ref='m'/></cml>").entries().len(), 0);
 }

@@ -18,7 +18,13 @@ fn survive(bytes: &[u8]) {
 
 fn samples() -> Vec<Vec<u8>> {
     let names = [
-        "frames.xyz", "bad_frames.xyz", "among_good.sdf", "properties.sdf", "v3000.sdf", "same.cml", "same_v2000.sdf.gz",
+        "frames.xyz",
+        "bad_frames.xyz",
+        "among_good.sdf",
+        "properties.sdf",
+        "v3000.sdf",
+        "same.cml",
+        "same_v2000.sdf.gz",
     ];
     names.map(|name| std::fs::read(file(name)).unwrap()).to_vec()
 }

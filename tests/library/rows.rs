@@ -25,6 +25,14 @@ fn the_demo_tells_kinds_apart() {
         ("broken/among_good.sdf:3", "phenol", "C6O", 0, 0, "hydrogens missing", "HYDROGENS_MISSING", ""),
         ("broken/among_good.sdf:5", "hexane", "C6H14", 0, 0, "molecule", "OK", "non-polar"),
         ("carbon_dioxide.xyz:1", "carbon dioxide", "CO2", 0, 0, "molecule", "OK", "non-polar"),
+        ("ammonium_acetate.cml:1", "ammonium acetate", "C2H7NO2", 0, 2, "several fragments", "SEVERAL_FRAGMENTS", ""),
+        ("carriers.cml:1", "acetone", "C3H6O", 0, 0, "molecule", "OK", "polar"),
+        ("carriers.cml:2", "dimethyl sulfoxide", "C2H6OS", 0, 0, "molecule", "NO_DATA", ""),
+        ("extra_v3000.sdf:1", "1,4-benzoquinone", "C6H4O2", 0, 0, "molecule", "OK", "non-polar"),
+        ("extra_v3000.sdf:2", "ammonium", "H4N", 1, 1, "ion", "OK", "charged"),
+        ("extra_v3000.sdf:3", "acetate", "C2H3O2", -1, 1, "ion", "OK", "charged"),
+        ("oxygenates.sdf.gz:2", "1,4-dioxane", "C4H8O2", 0, 0, "molecule", "OK", "undecided"),
+        ("sulfur_hexafluoride.cml:1", "sulfur hexafluoride", "F6S", 0, 0, "molecule", "OK", "non-polar"),
         ("ions_and_pairs.xyz:1", "ammonium", "H4N", 1, 1, "ion", "OK", "charged"),
         ("ions_and_pairs.xyz:2", "acetate", "C2H3O2", -1, 1, "ion", "OK", "charged"),
         ("ions_and_pairs.xyz:3", "ammonium acetate", "C2H7NO2", 0, 2, "several fragments", "SEVERAL_FRAGMENTS", ""),
@@ -138,7 +146,7 @@ fn the_table_of_atoms() {
     assert_eq!((number(&table, "vdw_radius_A", water[1]), number(&table, "covalent_radius_A", water[1])), (1.52, 0.66));
 }
 
-fn sd(title: &str, code: &str, atoms: &[(f64, f64, f64, &str)], bonds: &[(usize, usize, i32)]) -> String {
+pub fn sd(title: &str, code: &str, atoms: &[(f64, f64, f64, &str)], bonds: &[(usize, usize, i32)]) -> String {
     let mut record = format!("{title}\n  byhand  0101262000{code}\n\n{:3}{:3}  0  0 V2000\n", atoms.len(), bonds.len());
     for (x, y, z, symbol) in atoms {
         record.push_str(&format!("{x:10.4}{y:10.4}{z:10.4} {symbol:<3} 0  0\n"));

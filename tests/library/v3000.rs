@@ -52,8 +52,7 @@ fn lines_go_on_and_indices_come_in_any_order() {
 fn coordination_is_a_bond_and_a_hydrogen_bond_is_none() {
     let library = read("v3000.sdf");
     let bonds = good(&library.entries()[3]).bonds.as_deref();
-    let expected =
-        [Bond { a: 0, b: 1, order: 0.0 }, Bond { a: 0, b: 3, order: 1.0 }, Bond { a: 2, b: 4, order: 1.0 }];
+    let expected = [Bond { a: 0, b: 1, order: 0.0 }, Bond { a: 0, b: 3, order: 1.0 }, Bond { a: 2, b: 4, order: 1.0 }];
     assert_eq!(bonds, Some(&expected[..]));
 }
 
@@ -62,7 +61,7 @@ fn a_broken_table_costs_itself() {
     let library = read("v3000.sdf");
     let told: Vec<String> = library.entries().iter().map(told).collect();
     let broken = [
-        (1, 43, "bond 1 of 1: its type 6 is for queries; expected 1 to 4, 9 or 10"),
+        (1, 46, "bond 1 of 1: its type 6 is for queries; expected 1 to 4, 9 or 10"),
         (4, 0, "atom 1 of 2: it stands for an R group; expected an element"),
         (5, 0, "the record has R groups"),
         (6, 0, "the record has templates"),
@@ -91,7 +90,8 @@ fn a_broken_table_costs_itself() {
 #[test]
 fn newlines_of_other_systems() {
     let plain = std::fs::read_to_string(file("v3000.sdf")).unwrap();
-    let told = |content: String| -> Vec<String> { parse(content.as_bytes()).entries().iter().map(super::told).collect() };
+    let told =
+        |content: String| -> Vec<String> { parse(content.as_bytes()).entries().iter().map(super::told).collect() };
     let expected = told(plain.clone());
     assert_eq!(told(plain.replace('\n', "\r\n")), expected);
     assert_eq!(told(plain.replace('\n', "\r")), expected);

@@ -125,7 +125,8 @@ fn electrons(
     let own = around.of(atom);
     let valence: f64 = own.iter().map(|&(_, k)| bonds[k as usize].order).sum();
     // An N-oxide may be stated with five bonds; its double bond to oxygen is then no part of the π system.
-    let oxide = |other: u32| z[atom] == 7 && valence == 5.0 && z[other as usize] == 8 && around.degree(other as usize) == 1;
+    let oxide =
+        |other: u32| z[atom] == 7 && valence == 5.0 && z[other as usize] == 8 && around.degree(other as usize) == 1;
     let mut doubles = own.iter().filter(|&&(other, k)| bonds[k as usize].order >= 2.0 && !oxide(other));
     if let Some(&(_, k)) = doubles.next() {
         let plain = bonds[k as usize].order == 2.0 && doubles.next().is_none();

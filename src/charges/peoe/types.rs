@@ -90,8 +90,7 @@ struct Around {
 pub(super) fn start(molecule: Molecule<'_>, bonding: &Bonding) -> Result<Start, Failure> {
     let atoms = molecule.len();
     let mut around = vec![Around::default(); atoms];
-    if let Some(index) =
-        bonding.bonds.iter().position(|bond| bond.a == bond.b || bond.a.max(bond.b) as usize >= atoms)
+    if let Some(index) = bonding.bonds.iter().position(|bond| bond.a == bond.b || bond.a.max(bond.b) as usize >= atoms)
     {
         return Err(Failure::new(Code::BadBond).item(index));
     }
@@ -297,7 +296,7 @@ fn share(scene: &Scene<'_>, types: &mut [AtomType], charge: &mut [f64]) {
             };
             let (anion, cation) = ((doubles(0), singles(-1)), (doubles(1), singles(0)));
             let (mut double, mut single) = if anion.0.is_empty() || anion.1.is_empty() { cation } else { anion };
-            if odd && element == 8 && single.is_empty() {
+            if odd && element == 8 && (double.is_empty() || single.is_empty()) {
                 // The radical's electron is shared, too.
                 let terminal = |atom: &u32| neighbours.degree(*atom as usize) == 1;
                 double = doubles(0).into_iter().filter(terminal).collect();

@@ -7,6 +7,11 @@
 //!
 //! Reference: Murray-Rust, Rzepa, J. Chem. Inf. Comput. Sci. 1999, 39, 928 and 2003, 43, 757 (from memory).
 
+mod atoms;
+mod charges;
+mod markup;
+mod molecule;
+
 use std::io::{BufRead, Result};
 
 use quick_xml::NsReader;
@@ -16,9 +21,9 @@ use quick_xml::escape::resolve_predefined_entity;
 use quick_xml::events::{BytesStart, Event};
 use quick_xml::name::ResolveResult;
 
-use super::cml_molecule::{Attributes, Building, Kind};
+use self::markup::Markup;
+use self::molecule::{Attributes, Building, Kind};
 use super::lines::quoted;
-use super::markup::Markup;
 use super::record::{Broken, Entry, Place};
 
 /// Deepest nesting of elements.
@@ -183,8 +188,8 @@ fn start(
     match attributes(element) {
         Ok(Ok(attributes)) => building.start(kind, &attributes, line),
         Ok(Err(wrong)) => {
-            building.start(kind, &Vec::new(), line);
             building.wrong(line, wrong);
+            building.start(kind, &Vec::new(), line);
         }
         Err(fatal) => return Step::Fatal(fatal),
     }

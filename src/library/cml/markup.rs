@@ -22,7 +22,7 @@ enum Encoding {
 
 /// A stream of bytes as the characters that its declaration says.
 #[derive(Debug)]
-pub(super) struct Markup<R> {
+pub(in crate::library) struct Markup<R> {
     input: R,
     encoding: Option<Encoding>,
     /// Bytes read before the encoding is known, or a character that is cut at the end of what was read.

@@ -8,13 +8,10 @@
 use std::borrow::Cow;
 use std::collections::BTreeMap;
 
-use super::ctfile::Fault;
-use super::lines::{decimal, integer, quoted};
-use super::record::{Broken, Entry, Place, Record, bonded_twice};
-use super::rows::bonding_of;
-use super::xyz::LARGEST_COORDINATE_A;
+use super::super::ctfile::Fault;
+use super::super::lines::{decimal, integer, quoted};
+use super::super::record::{Broken, Entry, Place, Record, bonded_twice};
 use crate::molecule::Bond;
-use crate::tables::element_by_text;
 
 /// Attributes of an element as (name, value).
 pub(super) type Attributes<'a> = Vec<(&'a str, Cow<'a, str>)>;
@@ -55,37 +52,37 @@ impl Kind {
 
 /// A molecule that is open: the outermost one or a fragment in it.
 #[derive(Debug)]
-struct Fragment {
-    line: u64,
+pub(super) struct Fragment {
+    pub(super) line: u64,
     /// Its first atom.
     first: usize,
     /// Atoms by their names; `None` for a name that several fragments use.
-    names: BTreeMap<String, Option<u32>>,
-    bonds: Vec<NamedBond>,
-    charge: Option<i64>,
+    pub(super) names: BTreeMap<String, Option<u32>>,
+    pub(super) bonds: Vec<NamedBond>,
+    pub(super) charge: Option<i64>,
 }
 
 #[derive(Debug)]
-struct NamedBond {
-    number: usize,
-    line: u64,
-    atoms: [String; 2],
+pub(super) struct NamedBond {
+    pub(super) number: usize,
+    pub(super) line: u64,
+    pub(super) atoms: [String; 2],
     /// `None` for a hydrogen bond.
-    order: Option<f64>,
-    wedge: i32,
+    pub(super) order: Option<f64>,
+    pub(super) wedge: i32,
 }
 
 /// The charge that a molecule or fragment states for its atoms.
 #[derive(Debug)]
-struct Total {
-    line: u64,
-    atoms: std::ops::Range<usize>,
-    charge: i64,
+pub(super) struct Total {
+    pub(super) line: u64,
+    pub(super) atoms: std::ops::Range<usize>,
+    pub(super) charge: i64,
 }
 
 /// How an atom's coordinates are stated.
 #[derive(Clone, Copy, Debug, PartialEq, Eq)]
-enum Coordinates {
+pub(super) enum Coordinates {
     Space,
     Paper,
     Nowhere,
@@ -94,19 +91,19 @@ enum Coordinates {
 /// What is known of an open molecule.
 #[derive(Debug)]
 pub(super) struct Building {
-    record: Record,
+    pub(super) record: Record,
     line: u64,
     titled: bool,
     reference: bool,
-    fragments: Vec<Fragment>,
-    totals: Vec<Total>,
-    charges: Vec<Option<i32>>,
-    hydrogens: Vec<(u32, i64)>,
-    coordinates: Option<Coordinates>,
+    pub(super) fragments: Vec<Fragment>,
+    pub(super) totals: Vec<Total>,
+    pub(super) charges: Vec<Option<i32>>,
+    pub(super) hydrogens: Vec<(u32, i64)>,
+    pub(super) coordinates: Option<Coordinates>,
     bonds: Vec<Bond>,
     /// Line and names of each bond.
     origin: Vec<(u64, [String; 2])>,
-    bonds_read: usize,
+    pub(super) bonds_read: usize,
     bonds_stated: bool,
     text: String,
     /// Name of the property that is open, and of the data item in it.
@@ -280,137 +277,6 @@ impl Building {
         self.fragments.push(Fragment { line, first, names: BTreeMap::new(), bonds: Vec::new(), charge });
     }
 
-    /// Atoms as lists in the attributes of `atomArray`.
-    fn atoms<'a>(&mut self, get: &dyn Fn(&str) -> Option<&'a str>, line: u64) -> Result<(), Fault> {
-        const LISTS: [&str; 13] = [
-            "atomID", "elementType", "x3", "y3", "z3", "x2", "y2", "formalCharge", "isotope", "isotopeNumber",
-            "spinMultiplicity", "hydrogenCount", "xFract",
-        ];
-        let lists: Vec<(&str, Vec<&str>)> =
-            LISTS.iter().filter_map(|&name| Some((name, get(name)?.split_whitespace().collect()))).collect();
-        let Some(count) = lists.first().map(|(_, list)| list.len()) else { return Ok(()) };
-        if let Some((name, list)) = lists.iter().find(|(_, list)| list.len() != count) {
-            let what = format!("the list {name} of atomArray has {} entries; expected {count}", list.len());
-            return Err((line, what));
-        }
-        for n in 0..count {
-            let one = |name: &str| {
-                let name = if name == "id" { "atomID" } else { name };
-                lists.iter().find(|(known, _)| *known == name).and_then(|(_, list)| list.get(n).copied())
-            };
-            self.atom(&one, line)?;
-        }
-        Ok(())
-    }
-
-    fn atom<'a>(&mut self, get: &dyn Fn(&str) -> Option<&'a str>, line: u64) -> Result<(), Fault> {
-        let number = self.record.atomic_number.len() + 1;
-        let fail = |what: String| (line, format!("atom {number}: {what}"));
-        let atom = u32::try_from(number - 1).map_err(|_| fail("there are too many atoms".to_owned()))?;
-        let symbol = get("elementType").ok_or_else(|| fail("it states no elementType".to_owned()))?.trim();
-        let z = element_by_text(symbol).map_err(|_| fail(format!("there is no element {}", quoted(symbol))))?;
-        let coordinate = |name: &str| -> Result<Option<f64>, Fault> {
-            let Some(text) = get(name) else { return Ok(None) };
-            match decimal(text) {
-                Some(x) if x.abs() <= LARGEST_COORDINATE_A => Ok(Some(x)),
-                Some(_) => Err(fail(format!("{name} is beyond 1e9 Å"))),
-                None => Err(fail(format!("expected a decimal number as {name}, found {}", quoted(text)))),
-            }
-        };
-        let whole = |name: &str, least: i64, most: i64| -> Result<Option<i32>, Fault> {
-            let Some(text) = get(name) else { return Ok(None) };
-            let value = integer(text).filter(|value| (least..=most).contains(value));
-            match value.and_then(|value| i32::try_from(value).ok()) {
-                Some(value) => Ok(Some(value)),
-                None => Err(fail(format!("expected {name} from {least} to {most}, found {}", quoted(text)))),
-            }
-        };
-        let (stated, xyz) = match (coordinate("x3")?, coordinate("y3")?, coordinate("z3")?) {
-            (Some(x), Some(y), Some(z)) => (Coordinates::Space, [x, y, z]),
-            (None, None, None) if get("xFract").is_some() => {
-                return Err(fail("its coordinates are fractions of a unit cell; expected x3, y3 and z3".to_owned()));
-            }
-            (None, None, None) => match (coordinate("x2")?, coordinate("y2")?) {
-                (Some(x), Some(y)) => (Coordinates::Paper, [x, y, 0.0]),
-                _ => (Coordinates::Nowhere, [0.0; 3]),
-            },
-            _ => return Err(fail("it states some of x3, y3 and z3; expected all three".to_owned())),
-        };
-        if *self.coordinates.get_or_insert(stated) != stated {
-            return Err(fail("its coordinates are not of the kind that the atoms before it have".to_owned()));
-        }
-        let isotope = get("isotopeNumber").or_else(|| get("isotope"));
-        if let Some(text) = isotope {
-            let mass = decimal(text).map(f64::round).filter(|mass| (1.0..1000.0).contains(mass));
-            let mass = mass.ok_or_else(|| fail(format!("expected a mass number as isotope, found {}", quoted(text))))?;
-            self.record.isotopes.push((atom, mass as i32));
-        }
-        // 1 is what every atom of a closed shell may state.
-        if let Some(spin) = whole("spinMultiplicity", 1, 20)?.filter(|&spin| spin > 1) {
-            self.record.radicals.push((atom, spin));
-        }
-        if let Some(count) = whole("hydrogenCount", 0, 20)? {
-            self.hydrogens.push((atom, i64::from(count)));
-        }
-        self.charges.push(whole("formalCharge", -100, 100)?);
-        self.record.atomic_number.push(z);
-        self.record.xyz.push(xyz);
-        if let (Some(id), Some(fragment)) = (get("id"), self.fragments.last_mut())
-            && fragment.names.insert(id.trim().to_owned(), Some(atom)).is_some()
-        {
-            return Err(fail(format!("its id {} is that of another atom", quoted(id))));
-        }
-        Ok(())
-    }
-
-    /// Bonds as lists in the attributes of `bondArray`.
-    fn bonds<'a>(&mut self, get: &dyn Fn(&str) -> Option<&'a str>, line: u64) -> Result<(), Fault> {
-        let list = |name: &str| get(name).map(|list| list.split_whitespace().collect::<Vec<&str>>());
-        let (a, b) = match (list("atomRef1"), list("atomRef2")) {
-            (None, None) => return Ok(()),
-            (a, b) => (a.unwrap_or_default(), b.unwrap_or_default()),
-        };
-        let order = list("order").unwrap_or_default();
-        if a.len() != b.len() || a.len() != order.len() {
-            let (a, b, order) = (a.len(), b.len(), order.len());
-            let what = format!("the lists of bondArray have {a}, {b} and {order} entries; expected as many of each");
-            return Err((line, what));
-        }
-        for ((&a, &b), &order) in a.iter().zip(&b).zip(&order) {
-            self.bond(Some((a, b)), Some(order), line)?;
-        }
-        Ok(())
-    }
-
-    /// A bond between two atoms, by their names in two texts or in one.
-    fn bond(&mut self, atoms: Option<(&str, &str)>, order: Option<&str>, line: u64) -> Result<(), Fault> {
-        self.bonds_read += 1;
-        let number = self.bonds_read;
-        let fail = |what: String| (line, format!("bond {number}: {what}"));
-        let (one, two) = atoms.ok_or_else(|| fail("it states no atomRefs2".to_owned()))?;
-        let mut names = one.split_whitespace().chain(two.split_whitespace());
-        let (Some(a), Some(b), None) = (names.next(), names.next(), names.next()) else {
-            return Err(fail(format!("expected two atoms, found {}", quoted(one))));
-        };
-        let order = match order.map(str::trim) {
-            Some("1" | "S" | "1.0") => Some(1.0),
-            Some("2" | "D" | "2.0") => Some(2.0),
-            Some("3" | "T" | "3.0") => Some(3.0),
-            Some("A" | "1.5") => Some(1.5),
-            Some("hbond") => None,
-            Some(other) => {
-                let found = quoted(other);
-                return Err(fail(format!("its order is {found}; expected 1, 2, 3, S, D, T, A or 1.5")));
-            }
-            None => return Err(fail("it states no order; expected 1, 2, 3, S, D, T, A or 1.5".to_owned())),
-        };
-        let atoms = [a.to_owned(), b.to_owned()];
-        if let Some(fragment) = self.fragments.last_mut() {
-            fragment.bonds.push(NamedBond { number, line, atoms, order, wedge: 0 });
-        }
-        Ok(())
-    }
-
     /// Closes the innermost molecule: its bonds find their atoms, its names join those around it.
     fn close(&mut self) -> Result<(), Fault> {
         let Some(mut fragment) = self.fragments.pop() else { return Ok(()) };
@@ -484,70 +350,6 @@ impl Building {
         }
         self.record.hydrogens_left_out = self.hydrogens_left_out();
         self.place_charges(atoms)
-    }
-
-    /// An atom states more hydrogen atoms than are bonded to it, or all atoms more than there are.
-    fn hydrogens_left_out(&self) -> bool {
-        let hydrogen = |atom: u32| self.record.atomic_number.get(atom as usize) == Some(&1);
-        let Some(bonds) = &self.record.bonds else {
-            let stated: i64 = self.hydrogens.iter().map(|&(_, count)| count).sum();
-            let there = self.record.atomic_number.iter().filter(|&&z| z == 1).count();
-            return usize::try_from(stated).is_ok_and(|stated| stated > there);
-        };
-        let mut there = vec![0_i64; self.record.atomic_number.len()];
-        for bond in bonds {
-            for (atom, other) in [(bond.a, bond.b), (bond.b, bond.a)] {
-                if let Some(there) = there.get_mut(atom as usize).filter(|_| hydrogen(other)) {
-                    *there += 1;
-                }
-            }
-        }
-        self.hydrogens.iter().any(|&(atom, count)| there.get(atom as usize).is_some_and(|&there| count > there))
-    }
-
-    /// Formal charges: those of the atoms, completed from what molecules and fragments state.
-    fn place_charges(&mut self, atoms: usize) -> Result<(), Fault> {
-        let on_atoms = self.charges.iter().any(Option::is_some);
-        for total in self.totals.iter().filter(|total| total.atoms.len() == 1) {
-            let charge = i32::try_from(total.charge).ok().filter(|charge| charge.abs() <= 100);
-            let Some(charge) = charge else {
-                return Err((total.line, format!("the charge {} is beyond 100 e", total.charge)));
-            };
-            if let Some(slot) = self.charges.get_mut(total.atoms.start) {
-                slot.get_or_insert(charge);
-            }
-        }
-        let stated: Vec<i32> = self.charges.iter().map(|charge| charge.unwrap_or(0)).collect();
-        let sum = |charges: &[i32], total: &Total| -> i64 {
-            charges.get(total.atoms.clone()).unwrap_or(&[]).iter().map(|&charge| i64::from(charge)).sum()
-        };
-        let misses = |charges: &[i32]| {
-            self.totals.iter().find(|total| sum(charges, total) != total.charge).map(|total| {
-                let (found, stated) = (sum(charges, total), total.charge);
-                (total.line, stated, found)
-            })
-        };
-        let any = self.charges.iter().any(Option::is_some) || !self.totals.is_empty();
-        let Some((line, charge, found)) = misses(&stated) else {
-            if self.record.bonds.is_some() || atoms == 1 || any {
-                self.record.formal_charge = Some(stated);
-            }
-            return Ok(());
-        };
-        if on_atoms {
-            return Err((line, format!("the charge of the molecule is {charge}, that of its atoms {found}")));
-        }
-        let mut derived = bonding_of(&self.record).map(|bonding| bonding.formal_charge).unwrap_or_default();
-        for (slot, charge) in derived.iter_mut().zip(&self.charges) {
-            *slot = charge.unwrap_or(*slot);
-        }
-        match misses(&derived) {
-            None if derived.len() == atoms => {
-                self.record.formal_charge = Some(derived);
-                Ok(())
-            }
-            _ => Err((line, format!("the charge {charge} of the molecule is on no atom, and the bonds do not place it"))),
-        }
     }
 }
 
