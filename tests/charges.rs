@@ -204,6 +204,7 @@ fn equivalent_atoms_have_equal_charges() {
 #[test]
 fn five_bonds_at_nitrogen_are_a_way_of_writing() {
     type Bonds<'a> = &'a [(u32, u32, f64)];
+    #[allow(clippy::type_complexity)]
     let cases: [(&str, &[i32], &[i32], Bonds<'_>, Bonds<'_>); 4] = [
         (
             "nitromethane",

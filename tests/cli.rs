@@ -177,9 +177,14 @@ fn the_demo_shows_what_it_says() {
             .map(|line| line.split_whitespace().collect::<Vec<_>>().join(" "))
             .collect()
     };
-    for compound in
-        ["tetrachloromethane", "p-dichlorobenzene", "trans-1,2-dichloroethene", "carbon dioxide", "hexane", "cyclohexane"]
-    {
+    for compound in [
+        "tetrachloromethane",
+        "p-dichlorobenzene",
+        "trans-1,2-dichloroethene",
+        "carbon dioxide",
+        "hexane",
+        "cyclohexane",
+    ] {
         assert!(verdict(compound).iter().all(|line| line.contains("non-polar")), "{compound}");
     }
     assert!(verdict("1,2-dichloroethane")[0].contains("one conformer"));

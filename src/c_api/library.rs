@@ -167,11 +167,8 @@ pub unsafe extern "C" fn bmom_library_size(
     guard(|| {
         // SAFETY: the caller's promise about every pointer, stated in the header.
         let arrays = unsafe { Arrays::promised() };
-        let out = [
-            arrays.cell(2, molecules, i64::MIN)?,
-            arrays.cell(3, atoms, i64::MIN)?,
-            arrays.cell(4, bonds, i64::MIN)?,
-        ];
+        let out =
+            [arrays.cell(2, molecules, i64::MIN)?, arrays.cell(3, atoms, i64::MIN)?, arrays.cell(4, bonds, i64::MIN)?];
         // SAFETY: as above.
         let library = unsafe { library_of(library)? };
         let (molecules, atoms, bonds) = library.size();

@@ -3,8 +3,8 @@
 use super::arrays::{Arrays, NAN, NO_QUANTITY, count, rows_code, run_rows};
 use super::guard::{guard, pool};
 use super::molecules::{
-    BondArrays, Bonds, ChargeColumn, Ends, MoleculeArrays, Molecules, checked_offsets, of_model, one_row,
-    remarks_of, set_numbers,
+    BondArrays, Bonds, ChargeColumn, Ends, MoleculeArrays, Molecules, checked_offsets, of_model, one_row, remarks_of,
+    set_numbers,
 };
 use super::settings::{bmom_settings, settings_of};
 use crate::charges::partial_charges;

@@ -25,7 +25,9 @@ fn with_argument(argument: &Argument, code: Code) -> String {
     };
     match code {
         _ if argument.holds == Holds::Block => format!("{name}: {}; the item tells which", code.text()),
-        Code::OutOfRange | Code::NotAllowed if !argument.range.is_empty() => format!("{name} must be {}", argument.range),
+        Code::OutOfRange | Code::NotAllowed if !argument.range.is_empty() => {
+            format!("{name} must be {}", argument.range)
+        }
         Code::OutOfRange => match limits(argument) {
             Some(limits) => format!("{name} must be {limits}"),
             None => format!("{name} is outside its range"),

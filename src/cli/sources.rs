@@ -190,7 +190,9 @@ fn value(choice: &Choice, element: &str, state: Option<&str>) -> Result<Outcome,
                         .into_iter()
                         .flatten()
                         .filter(|(_, value)| !value.is_null() && value.as_str() != Some(""))
-                        .map(|(name, value)| format!("{name} {}", value.as_str().map_or(value.to_string(), str::to_owned)))
+                        .map(|(name, value)| {
+                            format!("{name} {}", value.as_str().map_or(value.to_string(), str::to_owned))
+                        })
                         .collect();
                     writeln!(out, "  from: {}", words.join("; "))?;
                 }

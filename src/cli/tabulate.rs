@@ -15,7 +15,8 @@ use bondmoment::library::{Settings, Table, Tables, Tabulation, Wanted};
 use bondmoment::moments::PEOE_RMS_D;
 use bondmoment::parallel::Threads;
 use bondmoment::selectors::{
-    CHARGES_PEOE_1980, FORMAT_BY_CONTENT, MASSES_ABUNDANT_ISOTOPE_2020, RADII_PYYKKO_DOUBLE_2009, RADII_PYYKKO_TRIPLE_2005,
+    CHARGES_PEOE_1980, FORMAT_BY_CONTENT, MASSES_ABUNDANT_ISOTOPE_2020, RADII_PYYKKO_DOUBLE_2009,
+    RADII_PYYKKO_TRIPLE_2005,
 };
 use bondmoment::tables;
 use clap::Args;
@@ -86,8 +87,7 @@ impl Tabulate {
     fn settings(&self) -> Result<Settings, Trouble> {
         let mut settings = Settings::default();
         for text in &self.set {
-            let (name, value) =
-                text.split_once('=').ok_or_else(|| format!("--set {text}: expected NAME=VALUE"))?;
+            let (name, value) = text.split_once('=').ok_or_else(|| format!("--set {text}: expected NAME=VALUE"))?;
             let name = name.trim();
             let group = SETTINGS.iter().find(|setting| setting.name == name).and_then(|setting| match setting.holds {
                 Holds::Choice(group, ..) => Some(group),
@@ -300,7 +300,12 @@ pub(crate) fn plain(out: &mut impl Write, table: &Table, first: bool) -> Result<
     let (bond, end, delta) = (column("strongest_bond")?, column("negative_end")?, column("delta_chi")?);
     let (status, detail) = (column("status")?, column("detail")?);
     let number = |column: &bondmoment::library::Column, row: usize, places: usize| {
-        column.numbers().ok().and_then(|values| values.get(row)).filter(|x| !x.is_nan()).map_or(String::new(), |x| format!("{x:.places$}"))
+        column
+            .numbers()
+            .ok()
+            .and_then(|values| values.get(row))
+            .filter(|x| !x.is_nan())
+            .map_or(String::new(), |x| format!("{x:.places$}"))
     };
     for row in 0..table.rows() {
         let strongest = match (bond.text(row), end.text(row)) {

@@ -213,11 +213,12 @@ fn of_one_conformer(
     if verdict.polarity != POLARITY_POLAR {
         return verdict;
     }
-    if let Ok(reach) = charges.and_then(|charges| greatest_dipole(molecule, bonding, charges)) {
-        if reach.hinges > 0 && reach.bound_D > verdict.dipole.magnitude.value + CHANGE_BY_TURNING_D {
-            verdict.bound_D = reach.bound_D;
-            verdict.remarks |= remark::ONE_CONFORMER;
-        }
+    if let Ok(reach) = charges.and_then(|charges| greatest_dipole(molecule, bonding, charges))
+        && reach.hinges > 0
+        && reach.bound_D > verdict.dipole.magnitude.value + CHANGE_BY_TURNING_D
+    {
+        verdict.bound_D = reach.bound_D;
+        verdict.remarks |= remark::ONE_CONFORMER;
     }
     verdict
 }

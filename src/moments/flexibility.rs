@@ -236,14 +236,16 @@ impl Problem {
         let sum = |v: &[Vec3]| v.iter().map(|&v| norm(v)).sum::<f64>();
         let mut best = sum(&v);
         let mut weights = vec![1.0; v.len()];
+        // The first, unweighted step may lie above the start: each step is held against the one before it.
+        let mut last = f64::INFINITY;
         for _ in 0..=STEPS {
             self.least_squares(&weights, &mut v);
             let now = sum(&v);
-            let better = best - now;
             best = best.min(now);
-            if better < 1e-4 * best || best < LEAST_MOMENT_D {
+            if last - now < 1e-4 * now || best < LEAST_MOMENT_D {
                 break;
             }
+            last = now;
             for (w, &v) in weights.iter_mut().zip(&v) {
                 *w = 1.0 / norm(v).max(LEAST_MOMENT_D);
             }
