@@ -1046,7 +1046,8 @@ void bmom_stop_free(struct bmom_stop *stop);
  Given: 1 format (BMOM_FORMAT_...); settings (NULL: defaults); threads (1: the caller's, 0: all); stop (NULL: none);
  2 path [text; raw bytes on Unix]. Returned: 3 library, NULL after any failure; free it with bmom_library_free.
  Status: FILE_MISSING, FILE_UNREADABLE, BAD_FORMAT, UNKNOWN_SELECTOR, WRONG_SELECTOR, STOPPED, BAD_HANDLE, BUSY,
- NULL_POINTER. Notes: a broken record keeps its place; its row says what is wrong.
+ NULL_POINTER. Notes: a broken record keeps its place; its row says what is wrong. Of a folder, a file that cannot be read
+ as structures is one broken record if its name ends in .xyz, .sdf, .sd, .mol or .cml (also .gz), and is left out otherwise.
  Reference: CTfile Formats, the published specification (molfiles and SD files, V2000 and V3000); Chemical Markup Language,
  Murray-Rust, Rzepa 1999; gzip (any of them, told by the content), RFC 1952; XYZ is common practice.
  */
@@ -1161,6 +1162,8 @@ void bmom_library_free(struct bmom_library *library);
  Returned: 5 tabulation, NULL after any failure; free it with bmom_tabulation_free.
  Status: NOT_ALLOWED (measured; or resume_from of another run, 4018), FILE_MISSING, FILE_UNREADABLE, BAD_FORMAT,
  UNKNOWN_SELECTOR, WRONG_SELECTOR, OUT_OF_RANGE (threads or settings), NOT_UTF8, BAD_HANDLE, BUSY, NULL_POINTER.
+ Notes: of a folder, a file that cannot be read as structures is one broken record if its name ends in .xyz, .sdf, .sd,
+ .mol or .cml (also .gz), and is left out otherwise.
  */
 int32_t bmom_tabulation_open(const struct bmom_table *measured,
                              int32_t format,

@@ -81,6 +81,15 @@ fn tabulate_exits_by_what_happened() {
     let broken = table.lines().nth(2).expect("a third line");
     assert!(broken.contains("BROKEN_RECORD") && broken.contains("record 2, line 9"), "{broken}");
 
+    let notes = file(folder.path(), "notes.txt", "name,value\na,1\n");
+    let output = bondmoment(&["tabulate", &notes, &good, "--layout", "csv"]);
+    assert_eq!(output.status.code(), Some(1), "{}", text(&output.stderr));
+    let table = text(&output.stdout);
+    assert_eq!(table.lines().count(), 3, "{table}");
+    assert!(table.contains("BROKEN_RECORD") && table.contains("notes.txt, record 1: "), "{table}");
+    assert_eq!(bondmoment(&["tabulate", &notes]).status.code(), Some(2));
+    assert_eq!(bondmoment(&["tabulate", &good, "no_such_file.sdf"]).status.code(), Some(2));
+
     let missing = bondmoment(&["tabulate", "no_such_file.sdf"]);
     assert_eq!(missing.status.code(), Some(2));
     assert!(text(&missing.stderr).contains("no_such_file.sdf"));

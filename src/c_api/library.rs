@@ -27,7 +27,8 @@ impl Kind for MoleculeLibrary {
 /// Given: 1 format (BMOM_FORMAT_...); settings (NULL: defaults); threads (1: the caller's, 0: all); stop (NULL: none);
 /// 2 path [text; raw bytes on Unix]. Returned: 3 library, NULL after any failure; free it with bmom_library_free.
 /// Status: FILE_MISSING, FILE_UNREADABLE, BAD_FORMAT, UNKNOWN_SELECTOR, WRONG_SELECTOR, STOPPED, BAD_HANDLE, BUSY,
-/// NULL_POINTER. Notes: a broken record keeps its place; its row says what is wrong.
+/// NULL_POINTER. Notes: a broken record keeps its place; its row says what is wrong. Of a folder, a file that cannot be read
+/// as structures is one broken record if its name ends in .xyz, .sdf, .sd, .mol or .cml (also .gz), and is left out otherwise.
 /// Reference: CTfile Formats, the published specification (molfiles and SD files, V2000 and V3000); Chemical Markup Language,
 /// Murray-Rust, Rzepa 1999; gzip (any of them, told by the content), RFC 1952; XYZ is common practice.
 #[unsafe(no_mangle)]

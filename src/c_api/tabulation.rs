@@ -42,6 +42,8 @@ impl Kind for Run {
 /// Returned: 5 tabulation, NULL after any failure; free it with bmom_tabulation_free.
 /// Status: NOT_ALLOWED (measured; or resume_from of another run, 4018), FILE_MISSING, FILE_UNREADABLE, BAD_FORMAT,
 /// UNKNOWN_SELECTOR, WRONG_SELECTOR, OUT_OF_RANGE (threads or settings), NOT_UTF8, BAD_HANDLE, BUSY, NULL_POINTER.
+/// Notes: of a folder, a file that cannot be read as structures is one broken record if its name ends in .xyz, .sdf, .sd,
+/// .mol or .cml (also .gz), and is left out otherwise.
 #[unsafe(no_mangle)]
 pub unsafe extern "C" fn bmom_tabulation_open(
     measured: *const bmom_table,

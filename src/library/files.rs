@@ -5,11 +5,11 @@ use std::fs::File;
 use std::io::{BufRead, BufReader, Seek, SeekFrom};
 use std::path::{Path, PathBuf};
 
-use super::format::{HEAD, format_of};
+use super::format::{HEAD, format_of, known_format};
 use super::packed::Input;
 use super::reader::{Reader, Spot, head_of, unreadable};
-use super::record::Problem;
-use crate::selectors::{FORMAT_CML, Selector};
+use super::record::{Broken, Entry, Place, Problem};
+use crate::selectors::{FORMAT_BY_CONTENT, FORMAT_CML, Selector};
 use crate::status::Code;
 
 /// Deepest nesting of folders that is followed.
@@ -27,6 +27,17 @@ pub(super) struct Source {
     pub packed: bool,
     /// Its size when the run began [bytes].
     pub size: u64,
+    /// Why it cannot be read as structures: such a file is one broken record.
+    pub broken: Option<String>,
+}
+
+impl Source {
+    /// The one record of a file that cannot be read as structures; `None` for one that can.
+    pub fn broken_record(&self) -> Option<Entry> {
+        let message = self.broken.clone()?;
+        let place = Place { file: self.name.clone(), number: 1, line: 0 };
+        Some(Entry::Broken(Broken { place, title: String::new(), line: 0, message }))
+    }
 }
 
 /// A file of a folder that is left out, and why.
@@ -39,24 +50,38 @@ pub struct LeftOut {
 }
 
 /// The files behind some paths: a file as it is, a folder as its files in the order of their names, folders within
-/// included, hidden ones not. What a folder holds besides structures is left out and reported; a file named by the
-/// caller must be readable.
+/// included, hidden ones not.
+///
+/// A file that cannot be read as structures is an error where it is the only path, and a source with its reason in
+/// `broken` where it is one of several paths, or one of a folder whose name ends as those of structures do. What a folder
+/// holds besides is left out and reported.
+///
+/// # Errors
+/// `FileMissing`, `UnknownSelector`, `WrongSelector` · `FileUnreadable` (a folder, or the only file) · `BadFormat` (the
+/// only file).
 pub(super) fn sources(paths: &[PathBuf], format: Selector) -> Result<(Vec<Source>, Vec<LeftOut>), Problem> {
+    let only = matches!(paths, [_]);
     let mut sources = Vec::new();
     let mut left_out = Vec::new();
     for path in paths {
         let shown = path.display().to_string();
         let about = std::fs::metadata(path).map_err(|error| unreadable(&shown, &error))?;
+        known_format(&shown, format)?;
         if !about.is_dir() {
             let name = path.file_name().map_or(shown, |name| name.to_string_lossy().into_owned());
-            sources.push(source(path, name, format)?);
+            sources.push(match source(path, name.clone(), format) {
+                Err(problem) if !only && problem.code != Code::FileMissing => broken(path, name, &problem),
+                source => source?,
+            });
             continue;
         }
         for file in files_of(path)? {
             let inside = file.strip_prefix(path).unwrap_or(&file);
             let parts: Vec<String> = inside.iter().map(|part| part.to_string_lossy().into_owned()).collect();
-            match source(&file, parts.join("/"), format) {
+            let name = parts.join("/");
+            match source(&file, name.clone(), format) {
                 Ok(source) => sources.push(source),
+                Err(problem) if ends_as_structures(&name) => sources.push(broken(&file, name, &problem)),
                 Err(problem) => left_out.push(LeftOut { path: file, message: problem.message }),
             }
         }
@@ -105,14 +130,36 @@ fn source(path: &Path, name: String, format: Selector) -> Result<Source, Problem
     let mut input = Input::told(stream).map_err(|error| unreadable(&shown, &error))?;
     let packed = input.packed_bytes().is_some();
     let format = format_of(&name, head_of(&mut input, &name)?, format)?;
-    Ok(Source { path: path.to_owned(), name, format, packed, size })
+    Ok(Source { path: path.to_owned(), name, format, packed, size, broken: None })
+}
+
+/// A file that cannot be read as structures, and why. The reason goes without the name, which the record has.
+fn broken(path: &Path, name: String, problem: &Problem) -> Source {
+    let shown = path.display().to_string();
+    let words = [&shown, &name].iter().find_map(|name| problem.message.strip_prefix(name.as_str())?.strip_prefix(": "));
+    let broken = Some(words.unwrap_or(&problem.message).to_owned());
+    let size = std::fs::metadata(path).map_or(0, |about| about.len());
+    Source { path: path.to_owned(), name, format: FORMAT_BY_CONTENT, packed: false, size, broken }
+}
+
+/// Whether a name ends as the names of structure files do, packed or not, in any case.
+fn ends_as_structures(name: &str) -> bool {
+    let name = name.to_ascii_lowercase();
+    let name = name.strip_suffix(".gz").unwrap_or(&name);
+    [".xyz", ".sdf", ".mol", ".sd", ".cml"].iter().any(|end| name.ends_with(end))
 }
 
 /// A stream that other threads may take over.
 pub(super) type Stream = Box<dyn BufRead + Send>;
 
 /// A reader of a file that goes on at a spot.
+///
+/// # Errors
+/// `FileMissing`, `FileUnreadable`, `NotAllowed` (no such spot) · `BadFormat` for a file with a broken record only.
 pub(super) fn reader_at(source: &Source, spot: Spot) -> Result<Reader<Stream>, Problem> {
+    if let Some(words) = &source.broken {
+        return Err(Problem::new(Code::BadFormat, format!("{}: {words}", source.name)));
+    }
     let stream =
         |byte| -> Result<Stream, Problem> { Ok(Box::new(BufReader::with_capacity(HEAD, open_at(source, byte)?))) };
     let again = source.packed || source.format == FORMAT_CML;

@@ -28,13 +28,9 @@ pub fn format_of(file: &str, head: &[u8], named: Selector) -> Result<Selector, P
     if head.contains(&0) {
         return bad(&format!("the file is binary; {KNOWN}"));
     }
-    match named {
-        FORMAT_XYZ | FORMAT_CTFILE | FORMAT_CML => return Ok(named),
-        FORMAT_BY_CONTENT => {}
-        other => {
-            let code = other.of_group("format").map_or_else(|failure| failure.code, |_| Code::Internal);
-            return Err(Problem::new(code, format!("{file}: no format has the number {}", other.0)));
-        }
+    known_format(file, named)?;
+    if named != FORMAT_BY_CONTENT {
+        return Ok(named);
     }
     let text = String::from_utf8_lossy(head.strip_prefix(b"\xEF\xBB\xBF").unwrap_or(head));
     let lines = lines_of(&text);
@@ -55,7 +51,22 @@ pub fn format_of(file: &str, head: &[u8], named: Selector) -> Result<Selector, P
     if has_ctfile_marks(&lines) {
         return Ok(FORMAT_CTFILE);
     }
+    if is_broken_xyz(&lines) {
+        return Ok(FORMAT_XYZ);
+    }
     bad(&format!("the content is in no format that is read here; {KNOWN}"))
+}
+
+/// Whether a format is one that a caller may name; `file` is what the message speaks of.
+///
+/// # Errors
+/// `UnknownSelector`, `WrongSelector`.
+pub(super) fn known_format(file: &str, named: Selector) -> Result<(), Problem> {
+    if [FORMAT_BY_CONTENT, FORMAT_XYZ, FORMAT_CTFILE, FORMAT_CML].contains(&named) {
+        return Ok(());
+    }
+    let code = named.of_group("format").map_or_else(|failure| failure.code, |_| Code::Internal);
+    Err(Problem::new(code, format!("{file}: no format has the number {}", named.0)))
 }
 
 fn packed(head: &[u8]) -> Option<&'static str> {
@@ -121,6 +132,38 @@ fn is_xyz(lines: &[&str]) -> bool {
     })
 }
 
+/// A count on the first line and, behind its comment, a line of a word and three numbers, however badly written; the first
+/// such line, if it begins as an atom does, may have something else among them. Other text that begins with a number is
+/// not taken for a frame.
+fn is_broken_xyz(lines: &[&str]) -> bool {
+    let mut lines = lines.iter().skip_while(|line| line.trim().is_empty());
+    if lines.next().and_then(|line| count_of(line)).is_none_or(|count| count < 0) {
+        return false;
+    }
+    let short = |word: &str| word.trim_end_matches(|c: char| c.is_ascii_digit()).len() <= 2;
+    lines.skip(1).enumerate().any(|(i, line)| {
+        let fields: Vec<&str> = line.split_whitespace().take(4).collect();
+        let [word, x, y, z] = fields[..] else { return false };
+        if meant_as_number(word) || !word.contains(char::is_alphabetic) {
+            return false;
+        }
+        match [x, y, z].into_iter().filter(|field| meant_as_number(field)).count() {
+            3 => true,
+            2 => i == 0 && short(word),
+            _ => false,
+        }
+    })
+}
+
+/// A number, or what stands for one: with a decimal comma, not a number at all, or too wide for its columns.
+fn meant_as_number(field: &str) -> bool {
+    let plain = field.replace(',', ".");
+    let name = field.trim_start_matches(['+', '-']).to_ascii_lowercase();
+    decimal(&plain).is_some()
+        || ["nan", "inf", "infinity"].contains(&name.as_str())
+        || field.bytes().all(|byte| byte == b'*')
+}
+
 /// A counts line somewhere, or the end of a record: the first record is broken, the next ones may not be.
 fn has_ctfile_marks(lines: &[&str]) -> bool {
     let counts = |line: &str| {
@@ -150,6 +193,12 @@ mod tests {
         assert_eq!(told(b"2\n\n\n  1  0  0  0  0  0  0  0  0  0999 V2000\n"), Ok(FORMAT_CTFILE));
         assert_eq!(told(b"\n\n\n  1  0\n    0.0000    0.0000    0.0000 He  0  0\n"), Ok(FORMAT_CTFILE));
         assert_eq!(told(b"t\nno counts line\n$$$$\n"), Ok(FORMAT_CTFILE));
+        // Frames whose first atom cannot be read; a record of an SD file whose title is a number.
+        for atom in ["C 0,0 0 0", "X 0 0 0", "C nan 0 0", "C **** **** 1.0", "C zero 0 0"] {
+            assert_eq!(told(format!("2\ncomment\n{atom}\n").as_bytes()), Ok(FORMAT_XYZ), "{atom}");
+        }
+        assert_eq!(told(b"0\n\nC 0 0 0\n"), Ok(FORMAT_XYZ));
+        assert_eq!(told(b"17\n\n\nno counts\n    0.0000    0.0000    0.0000 C   0  0\n$$$$\n"), Ok(FORMAT_CTFILE));
         assert_eq!(told(b"<?xml version=\"1.0\"?><cml/>"), Ok(FORMAT_CML));
         assert_eq!(told(b"\xEF\xBB\xBF\n<c:molecule id=\"m1\">"), Ok(FORMAT_CML));
         assert_eq!(told(b"<molecule>\n\n\n  1  0  0     0  0            999 V3000\n"), Ok(FORMAT_CTFILE));
@@ -167,6 +216,10 @@ mod tests {
             (b" \n\n", "empty"),
             (b"name,value\na,1\n", "no format"),
             (b"2\n\nHe 0 0\n", "no format"),
+            (b"2024\n\nAll files of this folder are notes, 12 of them.\n", "no format"),
+            (b"12\nTable 1 2 3\n", "no format"),
+            (b"2\n\n0.5 0 1 0\nnan 0.5 0 1\n", "no format"),
+            (b"twelve\nx\nX 0 0 0\n", "no format"),
             (b"# Notes\n\nAll files are V2000\n$$$$ is the end of a record\n", "no format"),
         ] {
             let problem = told(head).unwrap_err();

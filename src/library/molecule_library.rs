@@ -41,7 +41,8 @@ pub struct Given<'a> {
 }
 
 impl MoleculeLibrary {
-    /// Reads a file, or all files of a folder.
+    /// Reads a file, or all files of a folder. A file of the folder that cannot be read as structures is one broken record
+    /// if its name ends as [`super::Tabulation::open`] says, and is left out otherwise.
     ///
     /// # Errors
     /// `FileMissing`, `FileUnreadable`, `BadFormat`, `UnknownSelector`, `WrongSelector`, `Stopped`.
@@ -53,6 +54,10 @@ impl MoleculeLibrary {
         }
         let mut entries = Vec::new();
         for source in &sources {
+            if let Some(entry) = source.broken_record() {
+                entries.push(entry);
+                continue;
+            }
             take_all(reader_at(source, Spot::START)?, &source.name, stop, &mut entries)?;
         }
         Self::with_bonds(entries, threads, stop)

@@ -102,7 +102,7 @@ pub struct Broken {
     pub place: Place,
     /// Title, as far as it was read.
     pub title: String,
-    /// The line at fault, from 1.
+    /// The line at fault, from 1; 0 where the file as a whole is.
     pub line: u64,
     /// What is wrong, and what was expected.
     pub message: String,
@@ -111,7 +111,11 @@ pub struct Broken {
 impl Broken {
     /// File, record, line and what is wrong, in one sentence.
     pub fn text(&self) -> String {
-        format!("{}, record {}, line {}: {}", self.place.file, self.place.number, self.line, self.message)
+        let Place { file, number, .. } = &self.place;
+        match self.line {
+            0 => format!("{file}, record {number}: {}", self.message),
+            line => format!("{file}, record {number}, line {line}: {}", self.message),
+        }
     }
 }
 

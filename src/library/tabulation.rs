@@ -75,8 +75,12 @@ impl Tabulation {
     /// Opens files and folders. `format` is `FORMAT_BY_CONTENT` or one that all files are in; `resume_from` is a text of
     /// [`Tabulation::position`] of a run through the same files.
     ///
+    /// A file that cannot be read as structures does not end a run through others: one of several paths, or one of a
+    /// folder whose name ends in .xyz, .sdf, .sd, .mol or .cml, with or without .gz, is a single broken record that says
+    /// why. Other files of a folder are left out. A single path to such a file is an error.
+    ///
     /// # Errors
-    /// `FileMissing`, `FileUnreadable`, `BadFormat` (a file named by the caller, or a folder without any file to read),
+    /// `FileMissing` · `FileUnreadable` (the only file, or a folder) · `BadFormat` (the only file, or no file to read),
     /// `UnknownSelector`, `WrongSelector`, `OutOfRange` (settings), `NotAllowed` (`resume_from` of another run).
     pub fn open(
         paths: &[PathBuf],
@@ -213,8 +217,13 @@ impl Tabulation {
                 return Err(stopped());
             }
             if self.reader.is_none() {
-                if self.file >= self.sources.len() {
-                    break;
+                let Some(source) = self.sources.get(self.file) else { break };
+                if let Some(entry) = source.broken_record() {
+                    held += 1;
+                    self.read += 1;
+                    self.pending.push(entry);
+                    self.file += 1;
+                    continue;
                 }
                 self.reader = Some(self.open_file(Spot::START)?);
             }

@@ -1,6 +1,6 @@
 //! How large can the dipole become when parts of the molecule turn about bonds?
 //!
-//! Bond lengths and angles are kept; the molecule is cut at its hinges (see [`super::hinges`]) into rigid fragments, and in
+//! Bond lengths and angles are kept; the molecule is cut at its hinges (see `hinges`) into rigid fragments, and in
 //! every conformation μ = Σ R_k m_k with one rotation (or, where nitrogen inverts, rotoinversion) a fragment. So
 //! |μ| ≤ Σ |m_k|, once two freedoms are used that do not change the sum:
 //! - a charge f on a point of the hinge axis, taken from one fragment and given to the other, makes fragments neutral and

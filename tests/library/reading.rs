@@ -46,6 +46,21 @@ fn a_bad_frame_costs_itself() {
 }
 
 #[test]
+fn a_bad_first_atom_costs_its_frame_only() {
+    for (atom, words) in [
+        ("C 0,0 0 0", "the coordinate \"0,0\" is no decimal number"),
+        ("X 0 0 0", "there is no element \"X\""),
+        ("C NaN 0 0", "the coordinate \"NaN\" is no decimal number"),
+    ] {
+        let alone = format!("2\nx\n{atom}\nO 0,0 0 1,1\n");
+        let told_alone: Vec<String> = parse(alone.as_bytes()).entries().iter().map(told).collect();
+        assert_eq!(told_alone, [format!("text, record 1, line 3: atom 1 of 2: {words}")]);
+        let library = parse(format!("{alone}1\nhelium\nHe 0 0 0\n").as_bytes());
+        assert_eq!((library.entries().len(), told(&library.entries()[1])), (2, "helium".to_owned()));
+    }
+}
+
+#[test]
 fn a_broken_record_never_eats_the_next() {
     let told: Vec<String> = read("among_good.sdf").entries().iter().map(told).collect();
     let wrong = [

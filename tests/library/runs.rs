@@ -105,6 +105,112 @@ fn a_folder_reports_what_it_leaves_out() {
     assert_eq!(problem.unwrap().code, Code::BadFormat);
 }
 
+/// A folder with the files given, and their paths.
+fn folder_of(files: &[(&str, &[u8])]) -> (tempfile::TempDir, Vec<PathBuf>) {
+    let folder = tempfile::tempdir().unwrap();
+    let paths = files.iter().map(|(name, content)| {
+        let path = folder.path().join(name);
+        std::fs::write(&path, content).unwrap();
+        path
+    });
+    let paths = paths.collect();
+    (folder, paths)
+}
+
+/// Record, status and detail of every row of a run.
+fn rows_of(run: &mut Tabulation, batch: usize) -> Vec<(String, String, String)> {
+    let mut rows = Vec::new();
+    while let Some(tables) = run.next_batch(batch, Wanted::ALL, Threads::new(1), &never()).unwrap() {
+        let table = &tables.polarity;
+        for row in 0..table.rows() {
+            rows.push((text(table, "record", row), text(table, "status", row), text(table, "detail", row)));
+        }
+    }
+    rows
+}
+
+const FLUORIDE: &[u8] = b"2\nhydrogen fluoride\nH 0 0 0\nF 0 0 0.9168\n";
+
+#[test]
+fn a_bad_file_among_several_is_a_broken_record() {
+    let zip: &[u8] = b"PK\x03\x04\x14\x00";
+    let (_folder, paths) =
+        folder_of(&[("a.xyz", FLUORIDE), ("b.dat", b"name,value\na,1\n"), ("c.sdf", zip), ("d.xyz", FLUORIDE)]);
+    let open =
+        |paths: &[PathBuf], format, from: Option<&str>| Tabulation::open(paths, format, Settings::default(), from);
+    let expected = [
+        ("a.xyz:1", None),
+        ("b.dat:1", Some("b.dat, record 1: the content is in no format that is read here")),
+        ("c.sdf:1", Some("c.sdf, record 1: the file is a zip archive, which is not read")),
+        ("d.xyz:1", None),
+    ];
+    for batch in [1, 2, 3, 10] {
+        let mut run = open(&paths, FORMAT_BY_CONTENT, None).unwrap();
+        let rows = rows_of(&mut run, batch);
+        assert!(run.left_out().is_empty());
+        assert_eq!(run.progress().bytes_done(), run.progress().bytes_total());
+        assert_eq!(rows.len(), expected.len());
+        for ((record, status, detail), (key, words)) in rows.iter().zip(expected) {
+            assert_eq!(record, key);
+            match words {
+                Some(words) => assert!(status == "BROKEN_RECORD" && detail.starts_with(words), "{detail}"),
+                None => assert_eq!(status, "OK"),
+            }
+        }
+    }
+    // Resumed before, between and behind the bad ones.
+    let mut position = String::new();
+    let mut keys = Vec::new();
+    loop {
+        let mut run = open(&paths, FORMAT_BY_CONTENT, Some(&position)).unwrap();
+        let Some(tables) = run.next_batch(1, Wanted::ALL, Threads::new(1), &never()).unwrap() else { break };
+        keys.push(text(&tables.polarity, "record", 0));
+        position = run.position();
+    }
+    assert_eq!(keys, expected.map(|(key, _)| key));
+    // Bad ones only: their rows are the result. One alone, a path to nothing and an unknown format are errors.
+    assert_eq!(rows_of(&mut open(&paths[1..3], FORMAT_BY_CONTENT, None).unwrap(), 5).len(), 2);
+    let refused = |paths: &[PathBuf], format| open(paths, format, None).err().unwrap().code;
+    assert_eq!(refused(&paths[2..3], FORMAT_BY_CONTENT), Code::BadFormat);
+    assert_eq!(refused(&[paths[0].clone(), file("none.xyz")], FORMAT_BY_CONTENT), Code::FileMissing);
+    assert_eq!(refused(&paths[1..3], bondmoment::selectors::Selector(0)), Code::UnknownSelector);
+    assert_eq!(refused(&paths[1..3], bondmoment::selectors::VDW_BONDI_1964), Code::WrongSelector);
+}
+
+#[test]
+fn a_bad_file_of_a_folder_is_told_by_its_ending() {
+    let (folder, _) = folder_of(&[
+        ("1.XYZ", b"name,value\na,1\n"),
+        ("2.sdf.gz", b"\x1F\x8B\x08\0\0"),
+        ("3.Mol", b""),
+        ("4.xyz", FLUORIDE),
+        ("5.txt", b"2024\n\nNotes of the year, 12 of them.\n"),
+        ("6.gz", b"\x1F\x8B\x08\0\0"),
+        ("7.xyz", b"2\nlight\nC 0,0 0 0\nO 1.1 0 0\n"),
+    ]);
+    let paths = [folder.path().to_owned()];
+    let mut run = Tabulation::open(&paths, FORMAT_BY_CONTENT, Settings::default(), None).unwrap();
+    let left_out: Vec<_> = run.left_out().iter().map(|file| file.path.file_name().unwrap().to_owned()).collect();
+    assert_eq!(left_out, ["5.txt", "6.gz"]);
+    let rows = rows_of(&mut run, 4);
+    let expected = [
+        ("1.XYZ:1", "1.XYZ, record 1: the content is in no format"),
+        ("2.sdf.gz:1", "2.sdf.gz, record 1: the gzip data "),
+        ("3.Mol:1", "3.Mol, record 1: the file is empty"),
+        ("4.xyz:1", ""),
+        ("7.xyz:1", "7.xyz, record 1, line 3: atom 1 of 2: the coordinate \"0,0\" is no decimal number"),
+    ];
+    assert_eq!(rows.len(), expected.len());
+    for ((record, status, detail), (key, words)) in rows.iter().zip(expected) {
+        assert!(record == key && detail.starts_with(words), "{record}: {detail}");
+        assert_eq!(status == "BROKEN_RECORD", !words.is_empty(), "{record}");
+    }
+    // The same records in memory.
+    let library = MoleculeLibrary::read(folder.path(), FORMAT_BY_CONTENT, Threads::new(1), &never()).unwrap();
+    let keys: Vec<String> = library.entries().iter().map(|entry| entry.place().key()).collect();
+    assert_eq!(keys, expected.map(|(key, _)| key));
+}
+
 /// A stream that hands out one byte at a time, as a slow pipe may.
 struct Drops(Vec<u8>, usize);
 

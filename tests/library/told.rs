@@ -53,7 +53,7 @@ fn coordinates_do_not_tell_the_charge_of_a_complex() {
     let dimer = "8\nFe2Cl6\nFe 0 0 1.6\nFe 0 0 -1.6\nCl 1.65 0 0\nCl -1.65 0 0\nCl 0 1.9 2.6\nCl 0 -1.9 2.6\nCl 0 1.9 -2.6\nCl 0 -1.9 -2.6\n";
     let table = polarity(dimer);
     let words = text(&table, "detail", 0);
-    assert!(words.contains("charge of a metal complex is not told by coordinates and taken as neutral"), "{words}");
+    assert!(words.contains("charge of a metal complex is not told by coordinates; taken as neutral"), "{words}");
     assert!(!words.contains("odd number") && !words.contains("charge sites") && !words.contains("derived"), "{words}");
     assert_eq!(text(&table, "structure_kind", 0), "molecule");
     assert_eq!(table.by_name("charge_sites").unwrap().integers().unwrap()[0], 0);
