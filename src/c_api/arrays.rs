@@ -111,17 +111,12 @@ impl Arrays {
         Ok(Out { pointer, len })
     }
 
-    /// An output array that the caller may not want.
+    /// An output array that the caller may not want; writing to it then does nothing.
     ///
     /// # Errors
     /// `Misaligned`, `TooLarge` of the argument.
-    pub(super) fn output_if<T: Copy>(
-        &mut self,
-        argument: i32,
-        pointer: *mut T,
-        len: usize,
-    ) -> Result<Option<Out<T>>, Failure> {
-        if pointer.is_null() { Ok(None) } else { self.output(argument, pointer, len).map(Some) }
+    pub(super) fn output_if<T: Copy>(&mut self, argument: i32, pointer: *mut T, len: usize) -> Result<Out<T>, Failure> {
+        if pointer.is_null() { Ok(Out { pointer, len: 0 }) } else { self.output(argument, pointer, len) }
     }
 
     /// Values with their uncertainties, a row each.
@@ -236,16 +231,14 @@ impl Quantities {
 #[derive(Clone, Copy)]
 pub(super) struct QuantitiesOut {
     value: Out<f64>,
-    u: Option<Out<f64>>,
+    u: Out<f64>,
 }
 
 impl QuantitiesOut {
     /// Writes a row.
     pub(super) fn set(self, i: usize, quantity: Quantity) {
         self.value.set(i, clean(quantity.value));
-        if let Some(u) = self.u {
-            u.set(i, clean(quantity.u));
-        }
+        self.u.set(i, clean(quantity.u));
     }
 }
 
@@ -330,7 +323,7 @@ impl Arrays {
 /// The failure of the call.
 pub(super) fn run_rows(
     n: usize,
-    row_status: Option<Out<i32>>,
+    row_status: Out<i32>,
     mut row: impl FnMut(usize) -> Result<(), Failure>,
     mut blank: impl FnMut(usize),
 ) -> Result<Code, Failure> {
@@ -345,9 +338,7 @@ pub(super) fn run_rows(
                 failure.status()
             }
         };
-        if let Some(out) = row_status {
-            out.set(i, status);
-        }
+        row_status.set(i, status);
     }
     Ok(rows_code(n, failed))
 }

@@ -316,16 +316,12 @@ pub unsafe extern "C" fn bmom_find_bonds_column(
                 }
             }
             offsets.set(row + 1, end as i64);
-            if let Some(out) = charge_out {
-                for (k, atom) in view.range(row).enumerate() {
-                    let charge = answer.as_ref().ok().and_then(|(_, bonding)| bonding.formal_charge.get(k).copied());
-                    out.set(atom, charge.unwrap_or(i32::MIN));
-                }
+            for (k, atom) in view.range(row).enumerate() {
+                let charge = answer.as_ref().ok().and_then(|(_, bonding)| bonding.formal_charge.get(k).copied());
+                charge_out.set(atom, charge.unwrap_or(i32::MIN));
             }
         }
-        if let Some(needed) = needed {
-            needed.set(0, end as i64);
-        }
+        needed.set(0, end as i64);
         if end > room {
             return Err(Failure::new(Code::BufferTooSmall));
         }

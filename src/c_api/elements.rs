@@ -105,9 +105,7 @@ pub unsafe extern "C" fn bmom_symbol_column(
             end += elements::symbol(z).map_or(0, str::len) as i64;
             offsets.set(i + 1, end);
         }
-        if let Some(needed) = needed {
-            needed.set(0, end);
-        }
+        needed.set(0, end);
         if all.len() > room {
             return Err(Failure::of(Code::BufferTooSmall, 2));
         }

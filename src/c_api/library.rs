@@ -211,13 +211,8 @@ pub unsafe extern "C" fn bmom_library_arrays(
         let status_out = arrays.output_if(0, row_status, rows)?;
         arrays.no_overlap()?;
         let (mut atom, mut bond, mut failed) = (0, 0, 0);
-        let offset = |out: Option<super::arrays::Out<i64>>, row: usize, at: usize| {
-            if let Some(out) = out {
-                out.set(row, at as i64);
-            }
-        };
-        offset(offsets_out, 0, 0);
-        offset(bond_offsets_out, 0, 0);
+        offsets_out.set(0, 0);
+        bond_offsets_out.set(0, 0);
         for (row, (entry, bonding)) in library.entries().iter().zip(library.bonding()).enumerate() {
             if let crate::library::Entry::Molecule(record) = entry {
                 for (k, &z) in record.atomic_number.iter().enumerate() {
@@ -225,12 +220,8 @@ pub unsafe extern "C" fn bmom_library_arrays(
                         Ok(bonding) => bonding.formal_charge.get(k).copied(),
                         Err(_) => record.formal_charge.as_ref().and_then(|charge| charge.get(k).copied()),
                     };
-                    if let Some(out) = number_out {
-                        out.set(atom + k, z);
-                    }
-                    if let Some(out) = charge_out {
-                        out.set(atom + k, charge.unwrap_or(i32::MIN));
-                    }
+                    number_out.set(atom + k, z);
+                    charge_out.set(atom + k, charge.unwrap_or(i32::MIN));
                     super::molecules::set_numbers(xyz_out, 3 * (atom + k), &record.xyz[k]);
                 }
                 atom += record.atomic_number.len();
@@ -238,9 +229,7 @@ pub unsafe extern "C" fn bmom_library_arrays(
             let status = match bonding {
                 Ok(bonding) => {
                     for one in &bonding.bonds {
-                        if let Some(out) = bond_atoms_out {
-                            out.set_all(2 * bond, &[one.a as i32, one.b as i32]);
-                        }
+                        bond_atoms_out.set_all(2 * bond, &[one.a as i32, one.b as i32]);
                         super::molecules::set_numbers(order_out, bond, &[one.order]);
                         bond += 1;
                     }
@@ -251,11 +240,9 @@ pub unsafe extern "C" fn bmom_library_arrays(
                     failure.status()
                 }
             };
-            offset(offsets_out, row + 1, atom);
-            offset(bond_offsets_out, row + 1, bond);
-            if let Some(out) = status_out {
-                out.set(row, status);
-            }
+            offsets_out.set(row + 1, atom as i64);
+            bond_offsets_out.set(row + 1, bond as i64);
+            status_out.set(row, status);
         }
         Ok(super::arrays::rows_code(rows, failed))
     })

@@ -249,9 +249,9 @@ impl ChargeColumn {
 /// Remarks, item at fault and status of every row, each where it is wanted.
 #[derive(Clone, Copy)]
 pub(super) struct Ends {
-    remarks: Option<Out<i32>>,
-    item: Option<Out<i32>>,
-    status: Option<Out<i32>>,
+    remarks: Out<i32>,
+    item: Out<i32>,
+    status: Out<i32>,
 }
 
 impl Ends {
@@ -280,9 +280,7 @@ impl Ends {
             Err(failure) => (0, failure.item, failure.status()),
         };
         for (out, value) in [(self.remarks, remarks), (self.item, item), (self.status, status)] {
-            if let Some(out) = out {
-                out.set(row, value);
-            }
+            out.set(row, value);
         }
     }
 }
@@ -300,11 +298,9 @@ pub(super) fn of_model(failure: Failure) -> Failure {
 }
 
 /// Writes numbers of a row side by side; the one NaN, no negative zero.
-pub(super) fn set_numbers(out: Option<Out<f64>>, start: usize, values: &[f64]) {
-    if let Some(out) = out {
-        for (k, &value) in values.iter().enumerate() {
-            out.set(start + k, clean(value));
-        }
+pub(super) fn set_numbers(out: Out<f64>, start: usize, values: &[f64]) {
+    for (k, &value) in values.iter().enumerate() {
+        out.set(start + k, clean(value));
     }
 }
 

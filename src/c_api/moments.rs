@@ -103,7 +103,7 @@ pub unsafe extern "C" fn bmom_dipole_column(
                     )
                 }
             };
-            set_numbers(Some(vector_out), 3 * row, &dipole.vector);
+            set_numbers(vector_out, 3 * row, &dipole.vector);
             set_numbers(covariance_out, 9 * row, dipole.covariance.as_flattened());
             magnitude_out.set(row, dipole.magnitude);
             set_numbers(origin_out, 3 * row, &dipole.origin);
@@ -272,7 +272,7 @@ pub unsafe extern "C" fn bmom_dipole_of_charges_column(
             failed += usize::from(answer.is_err());
             let blank = Dipole { magnitude: NO_QUANTITY, ..Dipole::new([NAN; 3], [[NAN; 3]; 3], [NAN; 3], false) };
             let dipole = answer.unwrap_or(blank);
-            set_numbers(Some(vector_out), 3 * row, &dipole.vector);
+            set_numbers(vector_out, 3 * row, &dipole.vector);
             set_numbers(covariance_out, 9 * row, dipole.covariance.as_flattened());
             magnitude_out.set(row, dipole.magnitude);
             ends.set(row, answer.map(|_| (0, -1)));

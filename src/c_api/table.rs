@@ -111,14 +111,12 @@ fn copy<T: Copy>(
     values: &[T],
     status: &[i32],
     out: Out<T>,
-    status_out: Option<Out<i32>>,
+    status_out: Out<i32>,
     put: impl Fn(T) -> T,
 ) {
     for (k, row) in rows.enumerate() {
         out.set(k, put(values[row]));
-        if let Some(status_out) = status_out {
-            status_out.set(k, status[row]);
-        }
+        status_out.set(k, status[row]);
     }
 }
 
@@ -200,13 +198,9 @@ pub unsafe extern "C" fn bmom_table_texts(
         for (k, row) in rows.clone().enumerate() {
             end += column.text(row).len();
             offsets.set(k + 1, end as i64);
-            if let Some(status) = status {
-                status.set(k, column.status()[row]);
-            }
+            status.set(k, column.status()[row]);
         }
-        if let Some(needed) = needed {
-            needed.set(0, end as i64);
-        }
+        needed.set(0, end as i64);
         if end > room {
             return Err(Failure::of(Code::BufferTooSmall, 5));
         }
