@@ -168,7 +168,8 @@ pub unsafe extern "C" fn bmom_length_from_dipole_column(
 /// Status of a row: NO_DATA (1101: the model has no parameters for an atom as it is bonded), BAD_BOND, ATOMS_TOO_CLOSE, NO_ATOMS,
 /// UNKNOWN_ELEMENT, MISSING, NOT_FINITE, OUT_OF_RANGE. Of the call: NOT_ALLOWED (GIVEN), BAD_OFFSETS, ...
 /// Remarks: BONDS_FOUND, CHARGES_FOUND, IMPOSSIBLE_VALENCE, ORDERS_NOT_ASSIGNED, SEVERAL_FRAGMENTS.
-/// Notes: PEOE is a sigma model with six sweeps; delocalised formal charge (carboxylate, nitro) is shared first. It fails
+/// Notes: PEOE is a sigma model with six sweeps; delocalised formal charge (carboxylate) is shared first, and opposite
+/// formal charges of bonded atoms (nitro) cancel. It fails
 /// for pi systems (C=O, NO2 and CN come out far too small) and for the sign of carbon monoxide.
 /// Reference: Gasteiger and Marsili, Tetrahedron 1980, 36, 3219 (parameters from memory, partly corroborated).
 #[unsafe(no_mangle)]

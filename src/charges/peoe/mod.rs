@@ -32,7 +32,7 @@ const SWEEPS: usize = 6;
 /// coordinates. `along_bond` holds the sum of the six flows along each bond.
 ///
 /// The sweeps start from the formal charges of the bonding (or, if it carries none, of the molecule), the delocalised
-/// ones shared first: see [`AtomType`] for the types and the sharing.
+/// ones shared first and opposite ones of bonded atoms cancelled: see [`AtomType`] for the types and the sharing.
 ///
 /// # Errors
 /// As [`Molecule::check`] · `BadBond` with the bond as item · `NoData` with the atom as item, where the model has no type
